@@ -1,0 +1,80 @@
+import type { Fluid } from '../environment/types.js';
+
+export type FoilKind = 'keel' | 'centreboard' | 'rudder';
+
+/** A straight-tapered foil under (or behind) the hull. Lengths m, angles rad. Axes as in the hull room. */
+export interface FoilSpec {
+  readonly kind: FoilKind;
+  /** Span of the exposed part, from root to tip. */
+  readonly span: number;
+  readonly rootChord: number;
+  readonly tipChord: number;
+  /** Sweep of the quarter-chord line, aft positive. */
+  readonly sweep: number;
+  /** Thickness / chord. */
+  readonly thickness: number;
+  /** x of the root's quarter chord and z of the root (negative below the waterline). */
+  readonly x: number;
+  readonly z: number;
+  /** True for a foil whose root cuts the surface (a transom-hung rudder): no end plate, ventilates. */
+  readonly surfacePiercing: boolean;
+  /** Largest lift coefficient before the foil stalls (or ventilates). */
+  readonly clMax: number;
+}
+
+export interface FoilSystemSpec {
+  readonly keel: FoilSpec;
+  readonly rudder: FoilSpec;
+  readonly canoeDraft: number;
+  readonly water: Fluid;
+  /** Share of the board lowered, 0 to 1, that the solver may choose between; [1, 1] for a fixed keel. */
+  readonly hoistRange: readonly [number, number];
+}
+
+/**
+ * Places in the output of `evaluateInto`. Forces N, moments N m.
+ * `lift` is normal to the foils' plane (leeward-to-windward positive); its horizontal part is lift cos(heel).
+ */
+export const FOIL = {
+  /** Sum of hull, keel and rudder lift normal to the centre plane, positive to windward. */
+  lift: 0,
+  /** Heeling moment of that lift about the origin: lift times depth, positive to leeward. */
+  heelMoment: 1,
+  /** Yaw moment about the origin, positive turning the bow to windward. */
+  yawMoment: 2,
+  keelInduced: 3,
+  keelProfile: 4,
+  rudderInduced: 5,
+  rudderProfile: 6,
+  keelLift: 7,
+  rudderLift: 8,
+  /** |cl| / clMax of keel and rudder: above 1 the state is no solution. */
+  keelStall: 9,
+  rudderStall: 10,
+  count: 11,
+} as const;
+
+/** Keel (with the hull's share of side force) and rudder, prepared; allocates nothing per call. */
+export interface FoilSystem {
+  readonly spec: FoilSystemSpec;
+  readonly keelSlope: number;
+  readonly rudderSlope: number;
+  readonly keelAspect: number;
+  readonly rudderAspect: number;
+  readonly keelArea: number;
+  readonly rudderArea: number;
+  /**
+   * speed m/s, leeway rad (positive: course to leeward of heading), rudder rad (positive: tiller pulled to
+   * windward, bow turns to leeward, rudder lifts to windward), heel rad, hoist 0 to 1 lowered. Returns the total
+   * drag along the course [N] (sum of the four drag parts). Drag is odd-free (even) and lift odd under a change of
+   * sign of (leeway, rudder). Smooth in every argument.
+   */
+  evaluateInto(
+    speed: number,
+    leeway: number,
+    rudder: number,
+    heel: number,
+    hoist: number,
+    out: Float64Array,
+  ): number;
+}
