@@ -30,6 +30,8 @@ export interface Bounds {
  */
 export interface ForceModel {
   readonly bounds: Bounds;
+  /** A speed typical of the boat [m/s], such as sqrt(g Lwl): sets the solver's scales. */
+  readonly speedScale: number;
   /**
    * Residual of the balance at x for wind tws [m/s] and twa [rad, from the course]:
    * surge and sway divided by the displacement weight, roll and yaw by weight * length.
@@ -44,6 +46,12 @@ export interface ForceModel {
   sideConditionsInto(out: Float64Array): void;
   /** Names of the side conditions, for reports. */
   readonly sideConditionNames: readonly string[];
+  /**
+   * Optional faster derivatives at x, where residualInto has just been called: jacobian of the residual
+   * (RES.count rows of X.count) and of the side conditions, row-major. Without it the solver differences.
+   * Returns the number of force evaluations it cost.
+   */
+  jacobianInto?(tws: number, twa: number, x: Float64Array, jacobian: Float64Array, side: Float64Array): number;
 }
 
 export type Regime = 'crew inboard' | 'crew part out' | 'crew full out' | 'easing' | 'heel limited';

@@ -1,0 +1,190 @@
+import type { Boat } from '../boat/index.js';
+import { FOIL } from '../foils/index.js';
+import { HULL } from '../hull/index.js';
+import { AERO, type SailSet } from '../sails/index.js';
+import { type ForceModel, RES, X } from './types.js';
+
+
+/** What the boat's force model keeps from its last evaluation, for tables and reports. */
+export interface BoatForces {
+  /** Places AERO, N and N m. */
+  readonly air: Float64Array;
+  /** Places FOIL. */
+  readonly foils: Float64Array;
+  /** Places HULL. */
+  readonly hull: Float64Array;
+  /** Righting moments [N m] of the hull's form with the crew inboard, and of the crew's arm. */
+  formMoment: number;
+  crewMoment: number;
+  /** Sums before scaling: N along and across the course, N m. */
+  readonly sums: Float64Array;
+}
+
+export interface BoatModel extends ForceModel {
+  readonly boat: Boat;
+  readonly sailSet: SailSet;
+  readonly forces: BoatForces;
+  /** Price on heeling moment [1/m] that belongs to a depower value. */
+  price(depower: number): number;
+}
+
+/** Lowest heel [rad] offered to the solver: a little to windward. Judgement. */
+const HEEL_TO_WINDWARD = (-5 * Math.PI) / 180;
+/** Largest depower value: the price is then 199 over the sails' height, which leaves next to nothing. */
+const DEPOWER_MAX = 0.995;
+
+/**
+ * Forces and moments of a boat under one sail set. Body and course axes as in methods: heading is turned to
+ * windward of the course by the leeway; water drag acts along the course, foil lift across it.
+ */
+export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
+  const { spec, hull, foils, mass } = boat;
+  const g = spec.gravity;
+  const weight = mass * g;
+  const length = hull.form.lwl;
+  const crewWeight = spec.crew.mass * g;
+  const priceHeight = Math.max(0.1, sailSet.centre[1]);
+  const keelDepth = -foils.spec.keel.z + 0.45 * foils.spec.keel.span;
+  const rudderDepth = -foils.spec.rudder.z + 0.45 * foils.spec.rudder.span;
+  const air = new Float64Array(AERO.count);
+  const water = new Float64Array(FOIL.count);
+  const hullParts = new Float64Array(HULL.count);
+  const sums = new Float64Array(RES.count);
+  const forces: BoatForces = { air, foils: water, hull: hullParts, formMoment: 0, crewMoment: 0, sums };
+  const flow = { tws: 0, twa: 0, speed: 0, leeway: 0 };
+  const hoist = spec.boardRange[1];
+
+  const lower = new Float64Array(X.count);
+  const upper = new Float64Array(X.count);
+  const limit = (j: number, a: number, b: number): void => {
+    lower[j] = a;
+    upper[j] = b;
+  };
+  limit(X.speed, 0, 20 * Math.sqrt(g * length));
+  limit(X.leeway, -1, 1);
+  limit(X.heel, HEEL_TO_WINDWARD, Math.min(spec.limits.heel, hull.heelMax));
+  limit(X.rudder, -spec.limits.rudder, spec.limits.rudder);
+  limit(X.depower, 0, DEPOWER_MAX);
+  limit(X.arm, spec.crew.armLee, spec.crew.armOut);
+
+  const price = (depower: number): number => depower / (1 - depower) / priceHeight;
+
+  const evaluateAir = (tws: number, twa: number, x: Float64Array): void => {
+    flow.tws = tws;
+    flow.twa = twa;
+    flow.speed = x[X.speed]!;
+    flow.leeway = x[X.leeway]!;
+    sailSet.evaluateInto(flow, x[X.heel]!, price(x[X.depower]!), air);
+  };
+
+  const evaluateWater = (x: Float64Array): void => {
+    foils.evaluateInto(x[X.speed]!, x[X.leeway]!, x[X.rudder]!, x[X.heel]!, hoist, water);
+    hull.resistanceInto(x[X.speed]!, x[X.heel]!, hullParts);
+  };
+
+  const add = (x: Float64Array, out: Float64Array): void => {
+    const heel = x[X.heel]!;
+    const leeway = x[X.leeway]!;
+    const sinHeel = Math.sin(heel);
+    const cosHeel = Math.cos(heel);
+    const sinLee = Math.sin(leeway);
+    const cosLee = Math.cos(leeway);
+    const drive = air[AERO.drive]!;
+    const side = air[AERO.side]! * cosHeel;
+    let hullDrag = 0;
+    for (let i = 0; i < HULL.count; i++) hullDrag += hullParts[i]!;
+    const keelDrag = water[FOIL.keelInduced]! + water[FOIL.keelProfile]!;
+    const rudderDrag = water[FOIL.rudderInduced]! + water[FOIL.rudderProfile]!;
+    forces.formMoment = weight * hull.rightingArm(heel);
+    forces.crewMoment = crewWeight * x[X.arm]! * cosHeel;
+    sums[RES.surge] = drive * cosLee + side * sinLee - hullDrag - keelDrag - rudderDrag;
+    sums[RES.sway] = side * cosLee - drive * sinLee - water[FOIL.lift]! * cosHeel;
+    sums[RES.roll] = air[AERO.heelMoment]! + water[FOIL.heelMoment]! - forces.formMoment - forces.crewMoment;
+    sums[RES.yaw] =
+      air[AERO.driveZ]! * sinHeel -
+      air[AERO.sideX]! * cosHeel +
+      water[FOIL.yawMoment]! +
+      (keelDrag * keelDepth + rudderDrag * rudderDepth) * sinHeel;
+    out[RES.surge] = sums[RES.surge]! / weight;
+    out[RES.sway] = sums[RES.sway]! / weight;
+    out[RES.roll] = sums[RES.roll]! / (weight * length);
+    out[RES.yaw] = sums[RES.yaw]! / (weight * length);
+  };
+
+  const residualInto = (tws: number, twa: number, x: Float64Array, out: Float64Array): void => {
+    evaluateAir(tws, twa, x);
+    evaluateWater(x);
+    add(x, out);
+  };
+
+  const sideConditionsInto = (out: Float64Array): void => {
+    out[0] = water[FOIL.keelStall]! - 1;
+    out[1] = water[FOIL.rudderStall]! - 1;
+  };
+
+  const xw = new Float64Array(X.count);
+  const c0 = new Float64Array(RES.count);
+  const c1 = new Float64Array(RES.count);
+  const g0 = new Float64Array(2);
+  const g1 = new Float64Array(2);
+  const air0 = new Float64Array(AERO.count);
+  const water0 = new Float64Array(FOIL.count);
+  const hull0 = new Float64Array(HULL.count);
+
+  /** Differences by parts: the air does not depend on rudder and arm, the water not on depower and arm. */
+  const jacobianInto = (
+    tws: number,
+    twa: number,
+    x: Float64Array,
+    jacobian: Float64Array,
+    side: Float64Array,
+  ): number => {
+    air0.set(air);
+    water0.set(water);
+    hull0.set(hullParts);
+    add(x, c0);
+    sideConditionsInto(g0);
+    xw.set(x);
+    for (let j = 0; j < X.count; j++) {
+      const size = j === X.speed ? Math.max(Math.abs(x[j]!), 0.02 * model.speedScale) : 1;
+      let h = 1e-6 * size;
+      if (j === X.depower && x[j]! + h > DEPOWER_MAX) h = -h;
+      xw[j] = x[j]! + h;
+      const inAir = j !== X.rudder && j !== X.arm;
+      const inWater = j !== X.depower && j !== X.arm;
+      if (inAir) evaluateAir(tws, twa, xw);
+      if (inWater) evaluateWater(xw);
+      add(xw, c1);
+      for (let i = 0; i < RES.count; i++) jacobian[i * X.count + j] = (c1[i]! - c0[i]!) / h;
+      if (inWater) {
+        sideConditionsInto(g1);
+        for (let i = 0; i < 2; i++) side[i * X.count + j] = (g1[i]! - g0[i]!) / h;
+      } else {
+        side[j] = 0;
+        side[X.count + j] = 0;
+      }
+      xw[j] = x[j]!;
+      if (inAir) air.set(air0);
+      if (inWater) {
+        water.set(water0);
+        hullParts.set(hull0);
+      }
+    }
+    return 4;
+  };
+
+  const model: BoatModel = {
+    boat,
+    sailSet,
+    forces,
+    bounds: { lower, upper },
+    speedScale: Math.sqrt(g * length),
+    residualInto,
+    sideConditions: 2,
+    sideConditionsInto,
+    sideConditionNames: ['keel lift', 'rudder lift'],
+    jacobianInto,
+    price,
+  };
+  return model;
+}

@@ -1,0 +1,116 @@
+import { type Attempt, createOptimiser } from './optimise.js';
+import { createSurvey, type Survey } from './survey.js';
+import { type ForceModel, type Unbalance, X } from './types.js';
+
+export interface Solution {
+  readonly ok: true;
+  readonly x: Float64Array;
+  readonly speed: number;
+  /** d speed / d twa along the optimum [m/s per rad]. */
+  readonly speedSlope: number;
+  readonly residual: number;
+  readonly evaluations: number;
+}
+
+export interface NoSolution {
+  readonly ok: false;
+  readonly why: Unbalance;
+  readonly reason: string;
+  readonly evaluations: number;
+}
+
+export type Outcome = Solution | NoSolution;
+
+/** Finds the fastest balanced state of a force model. Keeps a workspace; answers depend on the arguments alone. */
+export interface Solver {
+  readonly model: ForceModel;
+  /**
+   * @param tws true wind speed [m/s]
+   * @param twa true wind angle from the course [rad]
+   * @param starts states to start from (neighbours of the polar); none: the survey finds starts
+   */
+  solve(tws: number, twa: number, starts: readonly Float64Array[]): Outcome;
+}
+
+function isBalance(a: Attempt): boolean {
+  return a.converged && a.stable;
+}
+
+export function createSolver(model: ForceModel): Solver {
+  const optimiser = createOptimiser(model);
+  const survey = createSurvey(model);
+
+  const solve = (tws: number, twa: number, starts: readonly Float64Array[]): Outcome => {
+    let evaluations = 0;
+    let best: Attempt | undefined;
+    const attempt = (start: Float64Array): Attempt => {
+      const a = optimiser.run(tws, twa, start);
+      evaluations += a.evaluations;
+      if (isBalance(a) && (best === undefined || a.x[X.speed]! > best.x[X.speed]!)) best = a;
+      return a;
+    };
+    const done = (a: Attempt): Solution => ({
+      ok: true,
+      x: a.x,
+      speed: a.x[X.speed]!,
+      speedSlope: a.speedSlope,
+      residual: a.residual,
+      evaluations,
+    });
+
+    if (!(tws > 0)) {
+      return { ok: false, why: 'no drive', reason: 'no wind, no motion', evaluations };
+    }
+    for (const s of starts) attempt(s);
+    if (best !== undefined) return done(best);
+
+    let seen: Survey | undefined;
+    let worst: Attempt | undefined;
+    for (const thorough of [false, true]) {
+      seen = survey(tws, twa, thorough);
+      evaluations += seen.evaluations;
+      const excess = (p: Survey['points'][number]): number => p.armExcess + p.rudderExcess + p.foilExcess;
+      const ranked = [...seen.points].sort(
+        (a, b) => (excess(a) === 0 ? 0 : 1 + excess(a)) - (excess(b) === 0 ? 0 : 1 + excess(b)) || b.x[0]! - a.x[0]!,
+      );
+      // The fastest start of those that hold, the next clearly slower ones, and the least violating one.
+      const chosen = ranked.slice(0, thorough ? 12 : 4);
+      for (const p of chosen) {
+        const a = attempt(p.x);
+        if (!isBalance(a) && (worst === undefined || a.residual < worst.residual)) worst = a;
+      }
+      if (best !== undefined) return done(best);
+    }
+    return { ok: false, ...diagnose(seen!, worst), evaluations };
+  };
+
+  return { model, solve };
+}
+
+function diagnose(survey: Survey, worst: Attempt | undefined): { why: Unbalance; reason: string } {
+  if (survey.points.length === 0) {
+    return {
+      why: 'no drive',
+      reason: survey.anyDrive
+        ? 'drive exceeds resistance at no speed at which leeway, heel and helm also balance'
+        : 'the sails give no forward force that exceeds the resistance at any speed',
+    };
+  }
+  const arm = Math.min(...survey.points.map((p) => p.armExcess));
+  const rudder = Math.min(...survey.points.map((p) => p.rudderExcess));
+  const foil = Math.min(...survey.points.map((p) => p.foilExcess));
+  if (arm > 1e-6) {
+    return {
+      why: 'overpowered',
+      reason: `even fully eased the heeling moment exceeds the crew's reach by ${(100 * arm).toFixed(1)} % of its range`,
+    };
+  }
+  if (foil > 1e-6) {
+    return { why: 'foil stalled', reason: `a foil would need ${(100 * (1 + foil)).toFixed(0)} % of its largest lift` };
+  }
+  if (rudder > 1e-6) return { why: 'rudder at its limit', reason: 'the helm cannot hold the course' };
+  return {
+    why: 'not converged',
+    reason: `residual ${worst?.residual.toExponential(1) ?? 'unknown'} of weight, limits exceeded by ${worst?.violation.toExponential(1) ?? 'unknown'}, last speed ${worst?.x[X.speed]?.toFixed(3) ?? '-'} m/s`,
+  };
+}
