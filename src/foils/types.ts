@@ -51,7 +51,10 @@ export const FOIL = {
   /** |cl| / clMax of keel and rudder: above 1 the state is no solution. */
   keelStall: 9,
   rudderStall: 10,
-  count: 11,
+  /** The rudder's share of heelMoment and yawMoment (already inside the sums). */
+  rudderHeelMoment: 11,
+  rudderYawMoment: 12,
+  count: 13,
 } as const;
 
 /** Keel (with the hull's share of side force) and rudder, prepared; allocates nothing per call. */

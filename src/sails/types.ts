@@ -65,7 +65,9 @@ export const AERO = {
   windageDrive: 5,
   windageSide: 6,
   windageMoment: 7,
-  count: 8,
+  windageSideX: 8,
+  windageDriveZ: 9,
+  count: 10,
 } as const;
 
 /** A group of sails set together, prepared; a workspace with warm starts, allocates nothing per call. */

@@ -1,0 +1,131 @@
+import type { Boat } from '../boat/index.js';
+import type { SailSet } from '../sails/index.js';
+import { AERO } from '../sails/index.js';
+import { type BoatModel, createBoatModel } from './boat-model.js';
+import { createSolver, type Outcome, type Solution, type Solver } from './solve.js';
+import { type Regime, type SailingResult, type SailingState, RES, X } from './types.js';
+
+/** A boat under one sail set, ready to be solved at many winds and angles. */
+export interface SetSolver {
+  readonly sailSet: SailSet;
+  readonly model: BoatModel;
+  readonly solver: Solver;
+}
+
+/** One solver per sail set. Each keeps a workspace: do not share one between workers. */
+export function createSetSolvers(boat: Boat): readonly SetSolver[] {
+  return boat.sailSets.map((sailSet) => {
+    const model = createBoatModel(boat, sailSet);
+    return { sailSet, model, solver: createSolver(model) };
+  });
+}
+
+/** Ease below this share is called full power. */
+const EASE_SHOWN = 0.005;
+
+function regimeOf(model: BoatModel, x: Float64Array, ease: number): Regime {
+  const { upper } = model.bounds;
+  if (ease > EASE_SHOWN) return 'easing';
+  if (x[X.heel]! > upper[X.heel]! - 1e-6) return 'heel limited';
+  if (x[X.arm]! > upper[X.arm]! * (1 - 1e-6)) return 'crew full out';
+  if (Math.abs(x[X.arm]!) < 0.02 * upper[X.arm]!) return 'crew inboard';
+  return 'crew part out';
+}
+
+/** The report of a solved state: angles, wind over the deck, ease, regime. */
+export function describeState(set: SetSolver, tws: number, twa: number, s: Solution): SailingState {
+  const { model, sailSet } = set;
+  const { x } = s;
+  const res = new Float64Array(RES.count);
+  model.residualInto(tws, twa, x, res);
+  const speed = x[X.speed]!;
+  const leeway = x[X.leeway]!;
+  const heel = x[X.heel]!;
+  const ahead = tws * Math.cos(twa - leeway) + speed * Math.cos(leeway);
+  const windward = tws * Math.sin(twa - leeway) - speed * Math.sin(leeway);
+  const flow = { tws, twa, speed, leeway };
+  let ease = 0;
+  if (x[X.depower]! > 0) {
+    const full = sailSet.fullMoment(flow, heel);
+    const { air } = model.forces;
+    const moment = air[AERO.heelMoment]! - air[AERO.windageMoment]!;
+    ease = full > 0 ? Math.max(0, 1 - moment / full) : 0;
+  }
+  const arm = x[X.arm]!;
+  const { lower, upper } = model.bounds;
+  const notes: string[] = [];
+  return {
+    status: 'balanced',
+    tws,
+    twa,
+    twaHeading: twa - leeway,
+    aws: Math.hypot(ahead, windward),
+    awa: Math.atan2(windward, ahead),
+    speed,
+    vmg: speed * Math.cos(twa),
+    leeway,
+    heel,
+    rudder: x[X.rudder]!,
+    ease,
+    depower: x[X.depower]!,
+    crewArm: arm,
+    crewShare: arm >= 0 ? arm / Math.max(1e-9, upper[X.arm]!) : -arm / Math.min(-1e-9, lower[X.arm]!),
+    sailSet: sailSet.name,
+    regime: regimeOf(model, x, ease),
+    residual: s.residual,
+    evaluations: s.evaluations,
+    notes,
+  };
+}
+
+export function describeOutcome(set: SetSolver, tws: number, twa: number, outcome: Outcome): SailingResult {
+  if (outcome.ok) return describeState(set, tws, twa, outcome);
+  return {
+    status: 'unbalanced',
+    tws,
+    twa,
+    why: outcome.why,
+    reason: outcome.reason,
+    evaluations: outcome.evaluations,
+  };
+}
+
+/** Vector of unknowns of a reported state, to start from or to evaluate again. */
+export function stateVector(s: SailingState): Float64Array {
+  const x = new Float64Array(X.count);
+  x[X.speed] = s.speed;
+  x[X.leeway] = s.leeway;
+  x[X.heel] = s.heel;
+  x[X.rudder] = s.rudder;
+  x[X.depower] = s.depower;
+  x[X.arm] = s.crewArm;
+  return x;
+}
+
+/**
+ * The fastest balanced state at one true wind speed [m/s] and angle [rad, from the course], over all sail sets.
+ * Solved from nothing: no neighbouring state is needed.
+ */
+export function solveState(boat: Boat, wind: { readonly tws: number; readonly twa: number }): SailingResult {
+  const twa = Math.abs(wind.twa);
+  let best: SailingResult | undefined;
+  for (const set of createSetSolvers(boat)) {
+    const r = describeOutcome(set, wind.tws, twa, solveAlone(set.solver, wind.tws, twa));
+    if (best === undefined) best = r;
+    else if (r.status === 'balanced' && (best.status !== 'balanced' || r.speed > best.speed)) best = r;
+  }
+  if (best === undefined) throw new RangeError('the boat has no sail set');
+  return best;
+}
+
+/** One state without neighbours: the survey's starts, then once more from full power at another heel. */
+export function solveAlone(solver: Solver, tws: number, twa: number): Outcome {
+  const first = solver.solve(tws, twa, []);
+  if (!first.ok) return first;
+  const again = first.x.slice();
+  again[X.depower] = 0;
+  again[X.heel] = 0.05;
+  const second = solver.solve(tws, twa, [first.x, again]);
+  if (!second.ok || second.speed < first.speed) return first;
+  return { ...second, evaluations: first.evaluations + second.evaluations };
+}
