@@ -91,7 +91,14 @@ export function forceBalance(boat: Boat, state: SailingState): ForceBalance {
     roll: foils[FOIL.rudderHeelMoment]!,
     yaw: foils[FOIL.rudderYawMoment]!,
   });
-  rows.push({ group: 'weight', name: 'hull form, crew inboard', forward: 0, leeward: 0, roll: -formMoment, yaw: 0 });
+  rows.push({
+    group: 'weight',
+    name: 'hull form, crew inboard',
+    forward: 0,
+    leeward: 0,
+    roll: -formMoment,
+    yaw: 0,
+  });
   rows.push({ group: 'weight', name: 'crew to windward', forward: 0, leeward: 0, roll: -crewMoment, yaw: 0 });
 
   const flow = { tws: state.tws, twa: state.twa, speed: state.speed, leeway: state.leeway };
@@ -125,7 +132,8 @@ export function forceBalance(boat: Boat, state: SailingState): ForceBalance {
     Math.abs(sum.roll - sums[RES.roll]!) / boat.hull.form.lwl,
     Math.abs(sum.yaw - sums[RES.yaw]!) / boat.hull.form.lwl,
   );
-  if (gap > 1e-9 * weight) throw new Error(`the force table misses ${gap.toExponential(2)} N of the model's sum`);
+  if (gap > 1e-9 * weight)
+    throw new Error(`the force table misses ${gap.toExponential(2)} N of the model's sum`);
   return { state, rows, sum, facts };
 }
 

@@ -4,7 +4,6 @@ import { HULL } from '../hull/index.js';
 import { AERO, type SailSet } from '../sails/index.js';
 import { type ForceModel, RES, X } from './types.js';
 
-
 /** What the boat's force model keeps from its last evaluation, for tables and reports. */
 export interface BoatForces {
   /** Places AERO, N and N m. */

@@ -3,7 +3,7 @@ import type { SailSet } from '../sails/index.js';
 import { AERO } from '../sails/index.js';
 import { type BoatModel, createBoatModel } from './boat-model.js';
 import { createSolver, type Outcome, type Solution, type Solver } from './solve.js';
-import { type Regime, type SailingResult, type SailingState, RES, X } from './types.js';
+import { RES, type Regime, type SailingResult, type SailingState, X } from './types.js';
 
 /** A boat under one sail set, ready to be solved at many winds and angles. */
 export interface SetSolver {

@@ -1,3 +1,14 @@
+export { forceBalance } from './balance.js';
+export { type BoatForces, type BoatModel, createBoatModel } from './boat-model.js';
+export {
+  createSetSolvers,
+  describeOutcome,
+  describeState,
+  type SetSolver,
+  solveAlone,
+  solveState,
+  stateVector,
+} from './boat-solver.js';
 export { type Attempt, createOptimiser, finiteDifferenceJacobian, type Optimiser } from './optimise.js';
 export { createSolver, type NoSolution, type Outcome, type Solution, type Solver } from './solve.js';
 export { createSurvey, type Survey, type SurveyPoint } from './survey.js';
@@ -7,8 +18,8 @@ export {
   type ForceModel,
   type ForceRow,
   type NoState,
-  type Regime,
   RES,
+  type Regime,
   type SailingResult,
   type SailingState,
   type Unbalance,

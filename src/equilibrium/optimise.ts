@@ -226,8 +226,8 @@ export function createOptimiser(model: ForceModel): Optimiser {
       }
       const rho = 100 * speed;
       const qpViolation = solvePlaneQp(qp, m, b11, b12, b22, grad1, grad2, rho);
-      let dHeel = qp.p[0]!;
-      let dDepower = qp.p[1]!;
+      const dHeel = qp.p[0]!;
+      const dDepower = qp.p[1]!;
       const dSpeed = ds0[0]! + th[0]! * dHeel + td[0]! * dDepower;
       const dLeeway = ds0[1]! + th[1]! * dHeel + td[1]! * dDepower;
       const dRudder = ds0[2]! + th[2]! * dHeel + td[2]! * dDepower;
@@ -279,7 +279,11 @@ export function createOptimiser(model: ForceModel): Optimiser {
         evaluations++;
         const m1 = merit(xNew, cNew, violationAt(xNew, gNew));
         const small = Math.abs(alpha * dSpeed) < 1e-6 * speed && Math.abs(gain) < 1e-7 * speed;
-        if (m1 < m0 + 1e-12 * speed || small || (violation < 1e-12 && m1 < m0 + 1e-7 * speed && cMax < 1e-6)) {
+        if (
+          m1 < m0 + 1e-12 * speed ||
+          small ||
+          (violation < 1e-12 && m1 < m0 + 1e-7 * speed && cMax < 1e-6)
+        ) {
           accepted = true;
           break;
         }

@@ -56,7 +56,10 @@ export function solvePlaneQp(
       if (v > 0) violation += v;
     }
     const merit =
-      0.5 * (b11 * x * x + 2 * b12 * x * y + b22 * y * y) - g1 * x - g2 * y + rho * Math.max(0, violation - 1e-13);
+      0.5 * (b11 * x * x + 2 * b12 * x * y + b22 * y * y) -
+      g1 * x -
+      g2 * y +
+      rho * Math.max(0, violation - 1e-13);
     if (merit < bestMerit) {
       bestMerit = merit;
       bestViolation = violation;
@@ -82,7 +85,12 @@ export function solvePlaneQp(
         const c2 = normals[2 * j + 1]!;
         const cross = a1 * c2 - a2 * c1;
         if (Math.abs(cross) < 1e-12 * (Math.abs(a1) + Math.abs(a2)) * (Math.abs(c1) + Math.abs(c2))) continue;
-        consider((limits[i]! * c2 - a2 * limits[j]!) / cross, (a1 * limits[j]! - limits[i]! * c1) / cross, i, j);
+        consider(
+          (limits[i]! * c2 - a2 * limits[j]!) / cross,
+          (a1 * limits[j]! - limits[i]! * c1) / cross,
+          i,
+          j,
+        );
       }
     }
   }

@@ -71,7 +71,8 @@ export function createSolver(model: ForceModel): Solver {
       evaluations += seen.evaluations;
       const excess = (p: Survey['points'][number]): number => p.armExcess + p.rudderExcess + p.foilExcess;
       const ranked = [...seen.points].sort(
-        (a, b) => (excess(a) === 0 ? 0 : 1 + excess(a)) - (excess(b) === 0 ? 0 : 1 + excess(b)) || b.x[0]! - a.x[0]!,
+        (a, b) =>
+          (excess(a) === 0 ? 0 : 1 + excess(a)) - (excess(b) === 0 ? 0 : 1 + excess(b)) || b.x[0]! - a.x[0]!,
       );
       // The fastest start of those that hold, the next clearly slower ones, and the least violating one.
       const chosen = ranked.slice(0, thorough ? 12 : 4);
@@ -106,7 +107,10 @@ function diagnose(survey: Survey, worst: Attempt | undefined): { why: Unbalance;
     };
   }
   if (foil > 1e-6) {
-    return { why: 'foil stalled', reason: `a foil would need ${(100 * (1 + foil)).toFixed(0)} % of its largest lift` };
+    return {
+      why: 'foil stalled',
+      reason: `a foil would need ${(100 * (1 + foil)).toFixed(0)} % of its largest lift`,
+    };
   }
   if (rudder > 1e-6) return { why: 'rudder at its limit', reason: 'the helm cannot hold the course' };
   return {

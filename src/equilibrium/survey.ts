@@ -102,7 +102,10 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
         // From fast to slow: the fastest stable equilibrium is met first, and leeway grows as speed falls.
         for (let k = rungs; k >= 0; k--) {
           previous.set(x);
-          x[X.speed] = Math.min(upper[X.speed]!, model.speedScale * LOWEST * (HIGHEST / LOWEST) ** (k / rungs));
+          x[X.speed] = Math.min(
+            upper[X.speed]!,
+            model.speedScale * LOWEST * (HIGHEST / LOWEST) ** (k / rungs),
+          );
           const s = surplus(tws, twa, x);
           if (!Number.isFinite(s)) {
             before = Number.NaN;

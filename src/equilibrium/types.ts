@@ -51,7 +51,13 @@ export interface ForceModel {
    * (RES.count rows of X.count) and of the side conditions, row-major. Without it the solver differences.
    * Returns the number of force evaluations it cost.
    */
-  jacobianInto?(tws: number, twa: number, x: Float64Array, jacobian: Float64Array, side: Float64Array): number;
+  jacobianInto?(
+    tws: number,
+    twa: number,
+    x: Float64Array,
+    jacobian: Float64Array,
+    side: Float64Array,
+  ): number;
 }
 
 export type Regime = 'crew inboard' | 'crew part out' | 'crew full out' | 'easing' | 'heel limited';

@@ -65,7 +65,8 @@ export function dragOnly(rhoA: number, cdA: number, rhoW: number, ctS: number): 
       const q = Math.hypot(ax, ay);
       const power = 1 - x[X.depower]!;
       const weight = 1000;
-      out[RES.surge] = (-0.5 * rhoA * cdA * power * q * ax - 0.5 * rhoW * ctS * v * v * (1 + x[X.heel]! ** 2)) / weight;
+      out[RES.surge] =
+        (-0.5 * rhoA * cdA * power * q * ax - 0.5 * rhoW * ctS * v * v * (1 + x[X.heel]! ** 2)) / weight;
       out[RES.sway] = (0.5 * rhoA * cdA * power * q * ay - 0.5 * rhoW * v * v * x[X.leeway]!) / weight;
       out[RES.roll] = -x[X.arm]! + 0.1 * x[X.heel]!;
       out[RES.yaw] = -x[X.rudder]!;

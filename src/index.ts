@@ -1,0 +1,10 @@
+/** The public door of the library. */
+export * from './boat/index.js';
+export {
+  type ForceBalance,
+  forceBalance,
+  type SailingResult,
+  type SailingState,
+  solveState,
+} from './equilibrium/index.js';
+export { type Polar, type PolarRequest, predictPolar } from './polar/index.js';
