@@ -1,0 +1,10 @@
+export { type ApparentWind, apparentWind, heeledWind } from './apparent-wind.js';
+export { air, water } from './fluids.js';
+export type { Fluid, SailingFlow, WindProfile } from './types.js';
+export {
+  charnockRoughness,
+  logWindProfile,
+  OPEN_WATER_ROUGHNESS,
+  powerWindProfile,
+  shearExponent,
+} from './wind-profile.js';
