@@ -9,7 +9,7 @@ export interface WindProfile {
   readonly kind: 'log' | 'power';
   /** Height [m] at which the true wind speed is quoted. */
   readonly referenceHeight: number;
-  /** U(z) / U(referenceHeight); z [m] above the water, values below 0.1 m are taken at 0.1 m. */
+  /** U(z) / U(referenceHeight); z [m] above the water; the lowest heights are taken at a floor (see wind-profile.ts). */
   factor(z: number): number;
 }
 

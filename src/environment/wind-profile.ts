@@ -1,7 +1,7 @@
 import type { WindProfile } from './types.js';
 
-/** Heights below this [m] (or 500 roughness lengths, if less) are taken there: the law means nothing at the surface. */
-const LOWEST = 0.1;
+/** Heights below so many roughness lengths are taken there: the law means nothing at the surface itself. */
+const LOWEST_OVER_ROUGHNESS = 500;
 
 /** Roughness length [m] of open water in a moderate breeze; common practice. */
 export const OPEN_WATER_ROUGHNESS = 0.0002;
@@ -19,8 +19,7 @@ export function logWindProfile(referenceHeight: number, roughness = OPEN_WATER_R
     );
   }
   const scale = 1 / Math.log(referenceHeight / roughness);
-  // The floor scales with the boat when reference height and roughness do (Froude scaling stays exact).
-  const floor = Math.min(LOWEST, 500 * roughness);
+  const floor = LOWEST_OVER_ROUGHNESS * roughness;
   const low = scale * Math.log(floor / roughness);
   return {
     kind: 'log',

@@ -1,0 +1,9 @@
+export {
+  createLoadingSolver,
+  inducedInto,
+  type LineSpec,
+  type LoadingProblem,
+  prepareLoading,
+  solveLoading,
+} from './loading.js';
+export { unknownsOf, type WakeLine, type WakeOptions, wakeEnergyMatrix, wakeLine } from './wake.js';
