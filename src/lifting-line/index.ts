@@ -7,3 +7,4 @@ export {
   solveLoading,
 } from './loading.js';
 export { unknownsOf, type WakeLine, type WakeOptions, wakeEnergyMatrix, wakeLine } from './wake.js';
+export { type LiftSlope, type Planform, weissinger } from './weissinger.js';

@@ -1,0 +1,6 @@
+export {
+  frictionCoefficientIttc57,
+  frictionCoefficientRough,
+  frictionCoefficientSchoenherr,
+} from './friction.js';
+export * from './types.js';
