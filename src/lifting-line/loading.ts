@@ -1,5 +1,5 @@
 import { type BoxQp, createBoxQp, solveBoxQp } from '../numerics/index.js';
-import { unknownsOf, type WakeLine, wakeEnergyMatrix } from './wake.js';
+import { unknownNodes, unknownsOf, type WakeLine, wakeEnergyMatrix } from './wake.js';
 
 /**
  * The loading of lifting lines as the unknown. Which spanwise circulation gives the most force in one direction
@@ -54,11 +54,10 @@ export function prepareLoading(lines: readonly LineSpec[], image: boolean): Load
   const k = new Float64Array(n);
   const cl0 = new Float64Array(n);
   lines.forEach((l, b) => {
-    const { nodes, sealed } = l.line;
+    const nodes = unknownNodes(l.line, { image });
     for (let i = first[b]!; i < first[b + 1]!; i++) {
-      const j = i - first[b]! + (sealed ? 0 : 1);
-      z[i] = nodes[j]!;
-      width[i] = j === 0 ? 0.5 * (nodes[1]! - nodes[0]!) : 0.5 * (nodes[j + 1]! - nodes[j - 1]!);
+      z[i] = nodes.z[i - first[b]!]!;
+      width[i] = nodes.width[i - first[b]!]!;
       chord[i] = l.chordAt(z[i]!);
       k[i] = l.k;
       cl0[i] = l.cl0;

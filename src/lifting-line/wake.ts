@@ -49,6 +49,33 @@ export interface WakeOptions {
   readonly image: boolean;
 }
 
+/** The line's nodes with the free ends moved outward. */
+function shiftedNodes(line: WakeLine, options: WakeOptions): Float64Array {
+  const { nodes, sealed } = line;
+  const last = nodes.length - 1;
+  const shifted = Float64Array.from(nodes);
+  shifted[last]! += TIP_SHIFT * (nodes[last]! - nodes[last - 1]!);
+  if (!sealed) {
+    const foot = nodes[0]! - TIP_SHIFT * (nodes[1]! - nodes[0]!);
+    shifted[0] = options.image ? Math.max(0, foot) : foot;
+  }
+  return shifted;
+}
+
+/** Height of each unknown node and the width its circulation counts for in the lift (trapezoids to the moved ends). */
+export function unknownNodes(line: WakeLine, options: WakeOptions): { z: Float64Array; width: Float64Array } {
+  const shifted = shiftedNodes(line, options);
+  const n = unknownsOf(line);
+  const z = new Float64Array(n);
+  const width = new Float64Array(n);
+  for (let i = 0; i < n; i++) {
+    const j = i + (line.sealed ? 0 : 1);
+    z[i] = line.nodes[j]!;
+    width[i] = 0.5 * (shifted[j + 1]! - shifted[Math.max(0, j - 1)]!);
+  }
+  return { z, width };
+}
+
 /**
  * The energy matrix A, row-major over all unknown nodes line after line; symmetric.
  * @param lines lines on one upright trace
@@ -63,12 +90,7 @@ export function wakeEnergyMatrix(lines: readonly WakeLine[], options: WakeOption
   for (const line of lines) {
     const { nodes, sealed } = line;
     const last = nodes.length - 1;
-    const shifted = Float64Array.from(nodes);
-    shifted[last]! += TIP_SHIFT * (nodes[last]! - nodes[last - 1]!);
-    if (!sealed) {
-      const foot = nodes[0]! - TIP_SHIFT * (nodes[1]! - nodes[0]!);
-      shifted[0] = options.image ? Math.max(0, foot) : foot;
-    }
+    const shifted = shiftedNodes(line, options);
     for (let e = 0; e < last; e++) {
       lo.push(shifted[e]!);
       hi.push(shifted[e + 1]!);

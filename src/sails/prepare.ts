@@ -9,6 +9,7 @@ import {
 import type { BoxQp } from '../numerics/index.js';
 import {
   ATTACHED_COS,
+  COST_CEILING,
   COST_FLOOR,
   FULL_NORMAL_FORCE,
   JIB_BLANKET,
@@ -177,7 +178,8 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
       const c = roundedMax(cosB[i]!, ATTACHED_COS, 0.06);
       const s = sinB[i]! > 0 ? Math.sqrt(Math.max(0, 1 - c * c)) : sinB[i]!;
       worth[i] = s - price * z[i]! * c;
-      cost[i] = roundedMax(c, COST_FLOOR, 0.1) + price * z[i]! * Math.max(0, s);
+      cost[i] =
+        roundedMax(c, COST_FLOOR, 0.1) - roundedMax(-price * z[i]! * Math.max(0, s), -COST_CEILING, 0.5);
     }
     solveLoading(problem, solver);
   };

@@ -19,6 +19,11 @@ const DEGREE = Math.PI / 180;
 export const ATTACHED_COS = Math.cos(76 * DEGREE);
 /** Least weight of drag in the loading problem, cos 56.3 deg: keeps it convex off the wind. */
 export const COST_FLOOR = 0.555;
+/**
+ * Most that a price on moment adds to the weight of drag. Exact below 1.5; beyond, lift itself has long lost its worth
+ * and a cap keeps the problem convex.
+ */
+export const COST_CEILING = 2;
 /** The branches blend over these incidences (judgement: thin sections separate wholly between them). */
 export const SEPARATION_START = 22 * DEGREE;
 export const SEPARATION_END = 40 * DEGREE;

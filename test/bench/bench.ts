@@ -8,8 +8,15 @@
 import { readFileSync } from 'node:fs';
 import { nelderMead } from 'fmin';
 import { levenbergMarquardt } from 'ml-levenberg-marquardt';
-import { createSetSolvers, describeState, RES, solveAlone, stateVector, X } from '../../src/equilibrium/index.js';
 import { readBoat } from '../../src/boat/index.js';
+import {
+  createSetSolvers,
+  describeState,
+  RES,
+  solveAlone,
+  stateVector,
+  X,
+} from '../../src/equilibrium/index.js';
 import { defaultWindAngles, defaultWindSpeeds, predictPolar } from '../../src/polar/index.js';
 
 const boat = readBoat(readFileSync('boats/keelboat.yaml', 'utf8'), 'boats/keelboat.yaml');
@@ -108,7 +115,13 @@ const lm = timed(() =>
         model.residualInto(s.tws, s.twa, xx, r);
         return (k: number) => r[k]! * 100;
       },
-      { initialValues: initial, maxIterations: 100, gradientDifference: 1e-6, damping: 1e-3, errorTolerance: 1e-18 },
+      {
+        initialValues: initial,
+        maxIterations: 100,
+        gradientDifference: 1e-6,
+        damping: 1e-3,
+        errorTolerance: 1e-18,
+      },
     );
     return { speed: fit.parameterValues[0]! * scale[0]!, error: fit.parameterError };
   }),
@@ -117,11 +130,17 @@ const lmOff = few.map((s, i) => lm.value[i]!.speed / s.speed - 1);
 
 const perState = ours.ms / sample.length;
 const f = (v: number, d = 2) => v.toFixed(d);
-console.log(`keelboat, ${defaultWindSpeeds.length} wind speeds x ${defaultWindAngles.length} angles and both optima`);
+console.log(
+  `keelboat, ${defaultWindSpeeds.length} wind speeds x ${defaultWindAngles.length} angles and both optima`,
+);
 console.log(`full polar                     cold ${f(cold.ms, 0)} ms, warm ${f(best, 0)} ms`);
-console.log(`states                         ${all.length}, balanced ${balanced.length}, not converged ${notConverged.length}`);
+console.log(
+  `states                         ${all.length}, balanced ${balanced.length}, not converged ${notConverged.length}`,
+);
 console.log(`states per second              ${f((all.length / best) * 1000, 0)}`);
-console.log(`force evaluations per state    mean ${f(polar.evaluations / all.length, 1)}, worst on the grid ${Math.max(...counts)}`);
+console.log(
+  `force evaluations per state    mean ${f(polar.evaluations / all.length, 1)}, worst on the grid ${Math.max(...counts)}`,
+);
 console.log(`one force evaluation           ${f(evaluation)} us`);
 console.log(`one state from a neighbour     ${f(perState * 1000, 0)} us`);
 console.log('');
@@ -140,4 +159,6 @@ const alone = few.map((s) => {
   const r = solveAlone(solver, s.tws, s.twa);
   return r.ok ? describeState(set, s.tws, s.twa, r).speed / s.speed - 1 : Number.NaN;
 });
-console.log(`from nothing against the sweep ${f(100 * Math.max(...alone.map(Math.abs)), 5)} % largest difference in speed`);
+console.log(
+  `from nothing against the sweep ${f(100 * Math.max(...alone.map(Math.abs)), 5)} % largest difference in speed`,
+);
