@@ -1,0 +1,132 @@
+import { logWindProfile, powerWindProfile, type WindProfile } from '../environment/index.js';
+import { prepareFoilSystem } from '../foils/index.js';
+import { generateRoundBilge, type HullOptions, prepareHull } from '../hull/index.js';
+import { prepareSailSet, type WindageBody } from '../sails/index.js';
+import type { Boat, BoatSpec, Estimate } from './types.js';
+
+/**
+ * Drag coefficients of bluff bodies in the air. Mast and wires: cylinder below its critical Reynolds number, 1.1
+ * (Hoerner, Fluid-Dynamic Drag 1965, from memory); hull side 1.0 and end 0.6: judgement.
+ */
+const DRAG = { cylinder: 1.1, hullSide: 1.0, hullEnd: 0.6 } as const;
+
+/** Wind profile of a boat. */
+export function windProfileOf(spec: BoatSpec): WindProfile {
+  return spec.wind.kind === 'log'
+    ? logWindProfile(spec.wind.referenceHeight, spec.wind.roughness)
+    : powerWindProfile(spec.wind.referenceHeight, spec.wind.exponent);
+}
+
+/** The bodies of a boat that catch the wind without driving it: topsides, mast, wires and crew. */
+export function windageOf(spec: BoatSpec): WindageBody[] {
+  const { dimensions, loa } = spec.hull;
+  const { rig, crew } = spec;
+  const { freeboard, beamMax } = dimensions;
+  const deck = Math.min(freeboard, rig.mastTop);
+  const mast = DRAG.cylinder * rig.mastDiameter * (rig.mastTop - deck);
+  const wires = DRAG.cylinder * rig.riggingArea;
+  const bodies: WindageBody[] = [
+    {
+      name: 'hull',
+      frontal: DRAG.hullEnd * freeboard * beamMax,
+      side: DRAG.hullSide * freeboard * loa,
+      x: 0,
+      z: 0.5 * freeboard,
+    },
+    { name: 'mast', frontal: mast, side: mast, x: rig.mastX, z: 0.5 * (rig.mastTop + deck) },
+    { name: 'crew', frontal: crew.dragArea, side: crew.dragArea, x: crew.x, z: crew.z },
+  ];
+  if (wires > 0) {
+    bodies.push({
+      name: 'rigging',
+      frontal: wires,
+      side: wires,
+      x: rig.mastX,
+      z: 0.5 * (rig.mastTop + deck),
+    });
+  }
+  return bodies;
+}
+
+/** Mass [kg] of boat and crew, and its centre with the crew inboard at their usual place. */
+export function massOf(spec: BoatSpec): { mass: number; x: number; z: number } {
+  let mass = spec.crew.mass;
+  let mx = spec.crew.mass * spec.crew.x;
+  let mz = spec.crew.mass * spec.crew.z;
+  for (const part of spec.weights) {
+    mass += part.mass;
+    mx += part.mass * part.x;
+    mz += part.mass * part.z;
+  }
+  return { mass, x: mx / mass, z: mz / mass };
+}
+
+/**
+ * Puts a boat together for computing: hull form and resistance, foils, sail sets, wind.
+ * @throws RangeError when hull, foils or sails cannot be made from the specification
+ */
+export function assembleBoat(input: { spec: BoatSpec; estimates?: readonly Estimate[] }): Boat {
+  const { spec, estimates = [] } = input;
+  const { mass, x, z } = massOf(spec);
+  const wind = windProfileOf(spec);
+  const lines = generateRoundBilge(spec.hull.dimensions);
+  const reach = (crewX: number): number => x + (spec.crew.mass / mass) * (crewX - spec.crew.x);
+  const options: HullOptions = {
+    water: spec.water,
+    gravity: spec.gravity,
+    residuary: spec.hull.residuary,
+    planing: spec.hull.planing,
+    centreReach: [reach(spec.hull.crewReach[0]), reach(spec.hull.crewReach[1])],
+    measured: spec.hull.measured,
+    ...(spec.keelVolume > 0 ? { keel: keelOf(spec) } : {}),
+  };
+  const hull = prepareHull(lines, { mass, x, z }, options);
+  const foils = prepareFoilSystem({
+    keel: spec.keel,
+    rudder: spec.rudder,
+    canoeDraft: hull.form.canoeDraft,
+    water: spec.water,
+    hoistRange: spec.boardRange,
+  });
+  const windage = windageOf(spec);
+  const byName = new Map(spec.sails.map((s) => [s.name, s]));
+  const sailSets = spec.sailSets.map((set) =>
+    prepareSailSet({
+      name: set.name,
+      sails: set.sails.map((name) => {
+        const sail = byName.get(name);
+        if (sail === undefined) {
+          throw new RangeError(`sail set ${set.name}: there is no sail called "${name}"`);
+        }
+        return sail;
+      }),
+      windage,
+      boomLimit: spec.rig.boomLimit,
+      wind,
+      airDensity: spec.air.density,
+      mastTop: spec.rig.mastTop,
+    }),
+  );
+  return {
+    spec,
+    lines,
+    hull,
+    foils,
+    sailSets,
+    wind,
+    mass,
+    centre: { x, z },
+    estimates,
+    warnings: hull.warnings,
+  };
+}
+
+/** Volume of the fin and the depth of its centre: that of the ballast, or of the planform without ballast. */
+function keelOf(spec: BoatSpec): NonNullable<HullOptions['keel']> {
+  const { keel } = spec;
+  const [r, t] = [keel.rootChord, keel.tipChord];
+  const ballast = spec.weights.find((w) => w.name === 'ballast');
+  const middle = -keel.z + (keel.span * (r + 2 * t)) / (3 * (r + t));
+  const depth = ballast !== undefined && ballast.z < keel.z ? -ballast.z : middle;
+  return { volume: spec.keelVolume, centreDepth: depth, draft: keel.span - keel.z };
+}

@@ -1,0 +1,9 @@
+export { assembleBoat, massOf, windageOf, windProfileOf } from './assemble.js';
+export { type DescriptionRow, describeBoat, lateralCentre, leadOf } from './describe.js';
+export { BoatFileError, type BoatFileProblem } from './problems.js';
+export { readBoatSpec } from './read.js';
+export { readBoatFile } from './read-file.js';
+export { readWhole as readBoat } from './read-whole.js';
+export { boatJsonSchema } from './schema.js';
+export { type StarterKind, starterBoat } from './starter.js';
+export type { Boat, BoatSpec, CrewSpec, Estimate, WeightItem } from './types.js';

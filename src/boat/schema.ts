@@ -1,0 +1,752 @@
+import { DEGREE, KINDS } from '../units/index.js';
+import type { Field, SectionField, ValueOf } from './fields.js';
+
+/**
+ * The one definition of the boat file. Fore-and-aft places are distances aft of the fore end of the design
+ * waterline (the waterline on which the given waterline_length is measured); forward of it they are negative.
+ * Heights are above that waterline. Ranges are in the unit of a bare number (m, m2, m3, kg, deg, m/s).
+ */
+const AFT = 'aft of the fore end of the design waterline (negative when forward of it)';
+const NO_SOURCE = 'common practice, no source';
+
+const foilKeys = {
+  aft_of_stem: {
+    type: 'quantity',
+    kind: 'length',
+    range: [-1, 30],
+    missing: 'required',
+    describe: `Leading edge of the foil where it leaves the hull, ${AFT}.`,
+  },
+  root_chord: {
+    type: 'quantity',
+    kind: 'length',
+    range: [0.05, 5],
+    missing: 'required',
+    describe: 'Chord of the foil where it leaves the hull.',
+  },
+  tip_chord: {
+    type: 'quantity',
+    kind: 'length',
+    range: [0.02, 5],
+    missing: { rule: '0.6 of the root chord (judgement)' },
+    describe: 'Chord of the foil at its tip.',
+  },
+  span: {
+    type: 'quantity',
+    kind: 'length',
+    range: [0.1, 5],
+    describe: 'Height of the foil from where it leaves the hull to its tip. Give this or draft.',
+  },
+  draft: {
+    type: 'quantity',
+    kind: 'length',
+    range: [0.1, 6],
+    describe: 'Depth of the tip below the waterline. Give this or span.',
+  },
+  sweep: {
+    type: 'quantity',
+    kind: 'angle',
+    range: [-20, 60],
+    missing: {
+      rule: 'straight trailing edge for a rudder, straight quarter-chord line otherwise (judgement)',
+    },
+    describe:
+      'Sweep of the line a quarter of the chord behind the leading edge, positive when the tip lies aft.',
+  },
+} as const satisfies Record<string, Field>;
+
+const thickness = (rule: string) =>
+  ({
+    type: 'quantity',
+    kind: 'ratio',
+    range: [0.01, 0.3],
+    missing: { rule },
+    describe: 'Thickness of the section over its chord.',
+    hint: 'thickness is a share of the chord, such as 10 %',
+  }) as const satisfies Field;
+
+const liftLimit = (rule: string) =>
+  ({
+    type: 'quantity',
+    kind: 'ratio',
+    range: [0.3, 2],
+    missing: { rule },
+    describe: 'Largest lift coefficient before the foil stalls or draws air.',
+  }) as const satisfies Field;
+
+const rootDepth = (rule: string) =>
+  ({
+    type: 'quantity',
+    kind: 'length',
+    range: [0, 2],
+    missing: { rule },
+    describe: 'Depth below the waterline at which the foil leaves the hull.',
+  }) as const satisfies Field;
+
+const keelKeys = {
+  ...foilKeys,
+  thickness: thickness(`12 % for a ballasted fin, 8 % for a board (${NO_SOURCE})`),
+  lift_limit: liftLimit('1.2, a symmetrical section in the tank (judgement)'),
+  root_depth: rootDepth('the canoe draft'),
+} as const satisfies Record<string, Field>;
+
+export const boatFile = {
+  type: 'section',
+  describe: 'A sailing boat: dimensions, weights, crew, foils, rig and sails.',
+  missing: 'required',
+  keys: {
+    name: { type: 'text', longest: 80, missing: 'required', describe: 'What the boat is called.' },
+    note: {
+      type: 'text',
+      longest: 2000,
+      describe: 'Anything worth remembering: where the figures come from, when measured.',
+    },
+    water: {
+      type: 'section',
+      describe: 'The water the boat floats in.',
+      keys: {
+        kind: {
+          type: 'choice',
+          choices: ['salt', 'fresh'],
+          missing: { rule: `salt (${NO_SOURCE})` },
+          describe: 'Salt or fresh water.',
+        },
+        temperature: {
+          type: 'quantity',
+          kind: 'temperature',
+          range: [0, 35],
+          missing: { rule: '15 degC, the standard temperature of towing-tank work' },
+          describe: 'Temperature of the water.',
+        },
+      },
+    },
+    wind: {
+      type: 'section',
+      describe: 'How the true wind is quoted, and how it grows with height.',
+      keys: {
+        measured_at: {
+          type: 'quantity',
+          kind: 'length',
+          range: [1, 50],
+          missing: { rule: '10 m, the meteorological standard height' },
+          describe: 'Height above the water at which true wind speeds are quoted.',
+        },
+        profile: {
+          type: 'choice',
+          choices: ['log', 'power'],
+          missing: { rule: 'log, the neutral surface layer' },
+          describe: 'Law by which the wind grows with height.',
+        },
+        roughness: {
+          type: 'quantity',
+          kind: 'length',
+          range: [1e-6, 0.1],
+          missing: { rule: `0.2 mm, open water in a moderate breeze (${NO_SOURCE})` },
+          describe: 'Roughness length of the water for the log law.',
+          hint: 'roughness of water is a fraction of a millimetre, such as 0.2 mm',
+        },
+        exponent: {
+          type: 'quantity',
+          kind: 'ratio',
+          range: [0, 0.5],
+          missing: { rule: `0.1 for the power law (${NO_SOURCE})` },
+          describe: 'Exponent of the power law.',
+        },
+        air_temperature: {
+          type: 'quantity',
+          kind: 'temperature',
+          range: [-20, 50],
+          missing: { rule: '15 degC, the standard atmosphere' },
+          describe: 'Temperature of the air, which sets its density.',
+        },
+      },
+    },
+    hull: {
+      type: 'section',
+      missing: 'required',
+      describe: 'Main dimensions of the hull. A round-bilge hull is generated from them.',
+      keys: {
+        length_overall: {
+          type: 'quantity',
+          kind: 'length',
+          range: [1.5, 30],
+          missing: { rule: '1.1 times the waterline length (judgement)' },
+          describe: 'Length of the hull overall.',
+        },
+        waterline_length: {
+          type: 'quantity',
+          kind: 'length',
+          range: [1.5, 30],
+          missing: 'required',
+          describe: 'Length of the design waterline, crew aboard and level.',
+        },
+        beam_overall: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.3, 8],
+          missing: { rule: '1.3 times the waterline beam (judgement)' },
+          describe: 'Greatest beam of the hull, at the sheer.',
+        },
+        waterline_beam: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.3, 8],
+          missing: 'required',
+          describe: 'Greatest beam of the design waterline.',
+        },
+        canoe_draft: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.03, 2],
+          missing: {
+            rule: 'from the displacement: volume / (Cp Cm Lwl Bwl), exact for the coefficients used',
+          },
+          describe: 'Depth of the hull below the waterline without keel, board or rudder.',
+        },
+        freeboard: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.05, 3],
+          missing: { rule: '0.10 of the waterline length (judgement)' },
+          describe: 'Height of the side amidships above the waterline.',
+        },
+        prismatic: {
+          type: 'quantity',
+          kind: 'ratio',
+          range: [0.45, 0.75],
+          missing: { rule: '0.56, the middle of the Delft series (0.52 to 0.60)' },
+          describe: 'Prismatic coefficient Cp of the hull without foils.',
+        },
+        midship: {
+          type: 'quantity',
+          kind: 'ratio',
+          range: [0.5, 0.95],
+          missing: { rule: '0.72, the middle of the Delft series (0.65 to 0.78)' },
+          describe: 'Midship coefficient Cm: fullness of the largest section.',
+        },
+        waterplane: {
+          type: 'quantity',
+          kind: 'ratio',
+          range: [0.55, 0.9],
+          missing: { rule: '0.70 for a hull that planes, 0.68 otherwise (judgement)' },
+          describe: 'Waterplane coefficient Cwp: area of the waterline over length times beam.',
+        },
+        buoyancy_aft_of_stem: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.5, 20],
+          missing: {
+            rule: 'under the common centre of weights and crew, so that the boat floats level, kept within 0 to 6 % of the waterline length abaft amidships',
+          },
+          describe: `Centre of buoyancy of the hull, ${AFT}.`,
+        },
+        planes: {
+          type: 'yes-no',
+          missing: {
+            rule: 'yes when the waterline length is over 5.7 times the cube root of the displaced volume (judgement)',
+          },
+          describe: 'Whether the hull can plane.',
+        },
+        wave_resistance: {
+          type: 'choice',
+          choices: ['delft-2008', 'delft-1998'],
+          missing: { rule: 'delft-2008, the later fit of the same towing-tank series' },
+          describe: 'Published regression for the residuary (wave-making) resistance.',
+        },
+        measured_resistance: {
+          type: 'list',
+          count: [3, 100],
+          describe:
+            'Measured upright resistance of the bare hull, speeds rising; used instead of the regressions.',
+          entry: {
+            type: 'section',
+            describe: 'One measured point.',
+            keys: {
+              speed: {
+                type: 'quantity',
+                kind: 'speed',
+                range: [0, 30],
+                missing: 'required',
+                describe: 'Speed through the water.',
+              },
+              force: {
+                type: 'quantity',
+                kind: 'force',
+                range: [0, 1e5],
+                missing: 'required',
+                describe: 'Resistance.',
+              },
+            },
+          },
+        },
+      },
+    },
+    weights: {
+      type: 'named',
+      count: [1, 40],
+      missing: 'required',
+      describe:
+        'Everything that has weight, without the crew, under names of your choice (hull, rig, gear, ...). A part called "ballast" is taken to be in the keel.',
+      entry: {
+        type: 'section',
+        describe: 'One part of the weight.',
+        keys: {
+          mass: {
+            type: 'quantity',
+            kind: 'mass',
+            range: [0.01, 50000],
+            missing: 'required',
+            describe: 'Mass of the part.',
+          },
+          aft_of_stem: {
+            type: 'quantity',
+            kind: 'length',
+            range: [-5, 35],
+            missing: {
+              rule: '54 % of the waterline length, for ballast the middle of the keel, for the rig the mast (judgement)',
+            },
+            describe: `Centre of the part, ${AFT}.`,
+          },
+          height: {
+            type: 'quantity',
+            kind: 'length',
+            range: [-6, 30],
+            missing: {
+              rule: '0.4 of the freeboard, for ballast 60 % of the way down the keel, for the rig 45 % of the mast height (judgement)',
+            },
+            describe: 'Height of its centre above the waterline; negative below.',
+          },
+        },
+      },
+    },
+    crew: {
+      type: 'section',
+      missing: 'required',
+      describe: 'The people aboard.',
+      keys: {
+        count: {
+          type: 'count',
+          range: [1, 20],
+          missing: { rule: `1 (${NO_SOURCE})` },
+          describe: 'How many sail.',
+        },
+        mass_each: {
+          type: 'quantity',
+          kind: 'mass',
+          range: [25, 200],
+          missing: { rule: `75 kg, dressed for sailing (${NO_SOURCE})` },
+          describe: 'Mass of one of the crew, dressed for sailing.',
+          hint: 'this is the mass of one person; write the number of people under count',
+        },
+        style: {
+          type: 'choice',
+          choices: ['hiking', 'trapeze', 'rail'],
+          missing: { rule: 'rail on a boat with ballast, hiking otherwise (judgement)' },
+          describe: 'How they balance the boat: hiking (feet under straps), trapeze, or sitting on the rail.',
+        },
+        on_trapeze: {
+          type: 'count',
+          range: [1, 20],
+          missing: { rule: `1 when the style is trapeze (${NO_SOURCE})` },
+          describe: 'How many of them are on a trapeze; the others hike.',
+        },
+        reach: {
+          type: 'quantity',
+          kind: 'length',
+          range: [-1, 2],
+          missing: {
+            rule: 'centre of the body outboard of the gunwale: hiking 0.35 m, trapeze 1.0 m, rail -0.07 m; the mean for several (common practice for a person of 1.80 m, no source)',
+          },
+          describe: 'Mean distance of the centres of their bodies outboard of the gunwale, fully out.',
+        },
+        arm_leeward: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0, 5],
+          missing: { rule: '0.7 of half the beam (judgement)' },
+          describe: 'How far to leeward of the centreline their common centre can move.',
+        },
+        aft_of_stem: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0, 30],
+          missing: { rule: '62 % of the waterline length (judgement)' },
+          describe: `Common centre of the crew when trimmed for the design waterline, ${AFT}.`,
+        },
+        foremost: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0, 30],
+          missing: { rule: '12 % of the waterline length forward of their usual place (judgement)' },
+          describe: `Foremost place of their common centre, ${AFT}.`,
+        },
+        aftmost: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0, 30],
+          missing: {
+            rule: '20 % of the waterline length aft of their usual place, at most 95 % from the stem (judgement)',
+          },
+          describe: `Aftmost place of their common centre, ${AFT}.`,
+        },
+        height: {
+          type: 'quantity',
+          kind: 'length',
+          range: [-0.5, 5],
+          missing: { rule: '0.25 m above the side deck (judgement)' },
+          describe: 'Height of the centre of their bodies above the waterline, sitting.',
+        },
+        drag_area: {
+          type: 'quantity',
+          kind: 'area',
+          range: [0, 20],
+          missing: {
+            rule: 'each hiking 0.40 m2, on a trapeze 0.55 m2, on the rail 0.30 m2 as they shelter each other (judgement)',
+          },
+          describe: 'Drag coefficient times area of the whole crew in the wind.',
+        },
+      },
+    },
+    foils: {
+      type: 'section',
+      missing: 'required',
+      describe: 'Keel or centreboard, and rudder.',
+      keys: {
+        keel: {
+          type: 'section',
+          describe: 'A fixed fin keel. Give this or a centreboard.',
+          keys: {
+            ...keelKeys,
+            volume: {
+              type: 'quantity',
+              kind: 'volume',
+              range: [1e-4, 10],
+              missing: {
+                rule: 'ballast over 7200 kg/m3 (cast iron), or without ballast 0.68 thickness chord2 span (exact for a four-digit section)',
+              },
+              describe: 'Volume of fin and bulb.',
+            },
+          },
+        },
+        centreboard: {
+          type: 'section',
+          describe: 'A board that can be raised. Give this or a keel.',
+          keys: {
+            ...keelKeys,
+            raises_to: {
+              type: 'quantity',
+              kind: 'ratio',
+              range: [0.25, 1],
+              missing: { rule: '0.3: three tenths of the board stays down (judgement)' },
+              describe: 'Smallest share of the board left below the hull while sailing.',
+            },
+          },
+        },
+        rudder: {
+          type: 'section',
+          missing: 'required',
+          describe: 'The rudder.',
+          keys: {
+            ...foilKeys,
+            thickness: thickness(`10 % (${NO_SOURCE})`),
+            hung: {
+              type: 'choice',
+              choices: ['transom', 'under_hull'],
+              missing: {
+                rule: 'on the transom (it cuts the surface) when its root is within 2 % of the waterline end or beyond (judgement)',
+              },
+              describe: 'On the transom, cutting the surface, or under the hull.',
+            },
+            lift_limit: liftLimit('1.2 under the hull, 0.85 on the transom, where it draws air (judgement)'),
+            root_depth: rootDepth('0 on the transom, half the canoe draft under the hull (judgement)'),
+          },
+        },
+      },
+    },
+    rig: {
+      type: 'section',
+      missing: 'required',
+      describe: 'Mast, boom and rigging.',
+      keys: {
+        mast_aft_of_stem: {
+          type: 'quantity',
+          kind: 'length',
+          range: [-1, 25],
+          missing: 'required',
+          describe: `Fore side of the mast, ${AFT}.`,
+        },
+        mast_height: {
+          type: 'quantity',
+          kind: 'length',
+          range: [1, 50],
+          missing: 'required',
+          describe: 'Top of the mast above the waterline.',
+        },
+        mast_diameter: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.02, 0.5],
+          missing: { rule: '0.011 of the mast height (judgement)' },
+          describe: 'Mean of the mast section, fore and aft and athwart.',
+        },
+        stayed: {
+          type: 'yes-no',
+          missing: { rule: 'yes when a jib is among the sails (judgement)' },
+          describe: 'Whether shrouds and a forestay hold the mast.',
+        },
+        forestay_height: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.5, 50],
+          missing: { rule: '80 % of the mast height (judgement)' },
+          describe: 'Height above the waterline at which the forestay meets the mast.',
+        },
+        rigging_area: {
+          type: 'quantity',
+          kind: 'area',
+          range: [0, 5],
+          missing: {
+            rule: 'four wires as long as the mast is high, 1/2000 of it thick; 0 for an unstayed mast (judgement)',
+          },
+          describe: 'Length times diameter of all shrouds and stays, added up.',
+        },
+        boom_height: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.1, 10],
+          missing: {
+            rule: 'the tack of the mainsail, or the freeboard plus 8 % of the mast height (judgement)',
+          },
+          describe: 'Height of the boom above the waterline at the mast.',
+        },
+        boom_length: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.3, 15],
+          missing: { rule: '1.03 of the foot of the mainsail (judgement)' },
+          describe: 'Length of the boom.',
+        },
+        boom_limit: {
+          type: 'quantity',
+          kind: 'angle',
+          range: [30, 110],
+          missing: { rule: '78 deg with shrouds, 85 deg without (judgement)' },
+          describe: 'Largest angle of the boom from the centreline.',
+        },
+      },
+    },
+    sails: {
+      type: 'named',
+      count: [1, 12],
+      missing: 'required',
+      describe: 'The sails, under names of your choice.',
+      entry: {
+        type: 'section',
+        describe: 'One sail.',
+        keys: {
+          kind: {
+            type: 'choice',
+            choices: ['mainsail', 'jib'],
+            missing: 'required',
+            describe: 'What kind of sail it is.',
+          },
+          luff: {
+            type: 'quantity',
+            kind: 'length',
+            range: [0.5, 40],
+            missing: {
+              rule: 'mainsail: from the boom to 1 % under the top of the mast; jib: 94 % of the way from its tack to the forestay at the mast (judgement)',
+            },
+            describe: 'Length of the fore edge.',
+          },
+          foot: {
+            type: 'quantity',
+            kind: 'length',
+            range: [0.3, 15],
+            missing: {
+              rule: 'from the area when that is given; otherwise mainsail 0.38 of the luff, jib 0.40 of the luff (judgement)',
+            },
+            describe: 'Length of the lower edge.',
+          },
+          area: {
+            type: 'quantity',
+            kind: 'area',
+            range: [0.5, 200],
+            describe: 'Area of the cloth. With luff and foot it sets the roach of a mainsail.',
+          },
+          head_width: {
+            type: 'quantity',
+            kind: 'length',
+            range: [0, 5],
+            missing: { rule: 'mainsail: 5 % of the foot (judgement)' },
+            describe: 'Mainsail only: width at the head.',
+          },
+          roach: {
+            type: 'quantity',
+            kind: 'ratio',
+            range: [-0.2, 0.6],
+            missing: { rule: 'mainsail: from the area when that is given; otherwise 15 % (judgement)' },
+            describe:
+              'Mainsail only: share by which the chord at half height exceeds the straight line from clew to head.',
+          },
+          tack_aft_of_stem: {
+            type: 'quantity',
+            kind: 'length',
+            range: [-5, 25],
+            missing: {
+              rule: 'mainsail: the mast; jib: 2 % of the waterline length aft of the stem (judgement)',
+            },
+            describe: `Fore lower corner of the sail, ${AFT}.`,
+          },
+          tack_height: {
+            type: 'quantity',
+            kind: 'length',
+            range: [0, 10],
+            missing: { rule: 'mainsail: the boom; jib: freeboard plus 2 % of the mast height (judgement)' },
+            describe: 'Height of that corner above the waterline.',
+          },
+          lift_limit: {
+            type: 'quantity',
+            kind: 'ratio',
+            range: [0.8, 2.5],
+            missing: { rule: 'from the table of section limits for its kind' },
+            describe: 'Largest lift coefficient of its sections.',
+          },
+        },
+      },
+    },
+    sail_sets: {
+      type: 'named',
+      count: [1, 12],
+      missing: { rule: 'one set with all the sails' },
+      describe: 'Which sails go up together: a name of your choice and the list of their names.',
+      entry: {
+        type: 'list',
+        count: [1, 4],
+        describe: 'The sails of the set.',
+        entry: { type: 'text', longest: 80, describe: 'Name of a sail.' },
+      },
+    },
+    limits: {
+      type: 'section',
+      describe: 'What the crew accept.',
+      keys: {
+        heel: {
+          type: 'quantity',
+          kind: 'angle',
+          range: [5, 40],
+          missing: { rule: '30 deg with ballast, 20 deg without (judgement)' },
+          describe: 'Largest angle of heel.',
+        },
+        rudder: {
+          type: 'quantity',
+          kind: 'angle',
+          range: [3, 45],
+          missing: { rule: '15 deg (judgement)' },
+          describe: 'Largest rudder angle.',
+        },
+      },
+    },
+  },
+} as const satisfies SectionField;
+
+/** What the file says, keys as written, quantities in SI and rad. */
+export type BoatFileValue = ValueOf<typeof boatFile>;
+
+/** The field at a path of keys, through named entries and lists. Undefined when there is none. */
+export function fieldAt(path: readonly string[]): Field | undefined {
+  let field: Field | undefined = boatFile;
+  for (const key of path) {
+    if (field === undefined) return undefined;
+    if (field.type === 'section') {
+      field = Object.hasOwn(field.keys, key) ? field.keys[key] : undefined;
+    } else if (field.type === 'named' || field.type === 'list') {
+      field = field.entry;
+    } else {
+      return undefined;
+    }
+  }
+  return field;
+}
+
+type JsonSchema = Record<string, unknown>;
+
+/** JSON Schema (draft 2020-12) of the boat file, so that editors complete, explain and check it. */
+export function boatJsonSchema(): JsonSchema {
+  return {
+    $schema: 'https://json-schema.org/draft/2020-12/schema',
+    title: 'Boat file',
+    ...schemaOf(boatFile),
+  };
+}
+
+function schemaOf(field: Field): JsonSchema {
+  const description = explain(field);
+  switch (field.type) {
+    case 'quantity': {
+      const { bareUnit, example } = KINDS[field.kind];
+      const [low, high] = field.range;
+      const unit = bareUnit === '' ? '' : ` ${bareUnit}`;
+      return {
+        description: `${description} Allowed: ${low}${unit} to ${high}${unit}.`,
+        anyOf: [
+          { type: 'number', minimum: low, maximum: high },
+          { type: 'string', pattern: '\\d', maxLength: 80 },
+        ],
+        examples: [example],
+      };
+    }
+    case 'count':
+      return { description, type: 'integer', minimum: field.range[0], maximum: field.range[1] };
+    case 'choice':
+      return { description, enum: [...field.choices] };
+    case 'yes-no':
+      return { description, enum: ['yes', 'no', true, false] };
+    case 'text':
+      return { description, type: 'string', maxLength: field.longest };
+    case 'section': {
+      const required = Object.entries(field.keys)
+        .filter(([, f]) => (f as Field).missing === 'required')
+        .map(([key]) => key);
+      return {
+        description,
+        type: 'object',
+        additionalProperties: false,
+        ...(required.length > 0 ? { required } : {}),
+        properties: Object.fromEntries(
+          Object.entries(field.keys).map(([key, f]) => [key, schemaOf(f as Field)]),
+        ),
+      };
+    }
+    case 'named':
+      return {
+        description,
+        type: 'object',
+        minProperties: field.count[0],
+        maxProperties: field.count[1],
+        additionalProperties: schemaOf(field.entry),
+      };
+    case 'list':
+      return {
+        description,
+        type: 'array',
+        minItems: field.count[0],
+        maxItems: field.count[1],
+        items: schemaOf(field.entry),
+      };
+  }
+}
+
+/** Description with the rule that stands in for a missing value. */
+export function explain(field: Field): string {
+  if (field.missing === undefined || field.missing === 'required') return field.describe;
+  return `${field.describe} If missing: ${field.missing.rule}.`;
+}
+
+/** Range of a quantity or count in SI and rad. */
+export function rangeSi(field: Field): readonly [number, number] | undefined {
+  if (field.type === 'count') return field.range;
+  if (field.type !== 'quantity') return undefined;
+  const factor = field.kind === 'angle' ? DEGREE : 1;
+  return [field.range[0] * factor, field.range[1] * factor];
+}
