@@ -2,4 +2,6 @@ export { type BoxQp, coordinateDescent, createBoxQp, solveBoxQp } from './box-qp
 export { choleskyFactor, choleskySolve } from './cholesky.js';
 export { luFactor, luSolve, luSolveTransposed } from './lu.js';
 export { boundedMinimum } from './minimum.js';
+export { hermite, type Pchip, pchip, pchipSlopes } from './pchip.js';
 export { bracketedRoot } from './root.js';
+export { type SymmetricSpline, symmetricSpline } from './spline.js';

@@ -1,0 +1,360 @@
+import type { Lines, Station } from './types.js';
+
+/** How a hull floats: its waterplane in body axes is Z = height + x tan(trim), Z the height after heeling. */
+export interface Flotation {
+  readonly heel: number;
+  /** Height [m] of the water amidships over the design waterline, in the heeled frame. */
+  readonly height: number;
+  /** Bow-down trim [rad]. */
+  readonly trim: number;
+}
+
+/** What is under water at a flotation. Lengths m; y to leeward, z up, both in the heeled frame. */
+export interface Immersed {
+  readonly volume: number;
+  readonly x: number;
+  readonly y: number;
+  readonly z: number;
+  readonly waterplane: number;
+  /** Centre of flotation, x. */
+  readonly flotationX: number;
+  /** Transverse and longitudinal second moments of the waterplane about the centre of flotation [m4]. */
+  readonly transverse: number;
+  readonly longitudinal: number;
+  /** Section areas by station [m2]. */
+  readonly sections: Float64Array;
+}
+
+/** A hull's sections as closed polygons with integration weights along x, ready for clipping. */
+export interface PreparedLines {
+  readonly lines: Lines;
+  readonly x: Float64Array;
+  readonly weight: Float64Array;
+  /** Closed polygons, leeward side positive y, anticlockwise or clockwise alike for all. */
+  readonly polygonY: readonly Float64Array[];
+  readonly polygonZ: readonly Float64Array[];
+}
+
+/**
+ * Weights of Simpson's rule for unevenly spaced stations (parabolas through successive threes; a last odd interval by
+ * the trapezoid rule).
+ */
+export function stationWeights(x: ArrayLike<number>): Float64Array {
+  const n = x.length;
+  const w = new Float64Array(n);
+  let i = 0;
+  for (; i + 2 < n; i += 2) {
+    const h0 = x[i + 1]! - x[i]!;
+    const h1 = x[i + 2]! - x[i + 1]!;
+    const s = (h0 + h1) / 6;
+    w[i]! += s * (2 - h1 / h0);
+    w[i + 1]! += (s * (h0 + h1) ** 2) / (h0 * h1);
+    w[i + 2]! += s * (2 - h0 / h1);
+  }
+  for (; i + 1 < n; i++) {
+    const h = 0.5 * (x[i + 1]! - x[i]!);
+    w[i]! += h;
+    w[i + 1]! += h;
+  }
+  return w;
+}
+
+/**
+ * @throws RangeError when stations do not go from aft to forward, or a section has fewer than two points or a
+ *   negative half-breadth
+ */
+export function prepareLines(lines: Lines): PreparedLines {
+  const { stations } = lines;
+  if (stations.length < 3)
+    throw new RangeError(`a hull needs three or more stations, not ${stations.length}`);
+  stations.forEach((s: Station, i) => {
+    if (i > 0 && !(s.x > stations[i - 1]!.x)) throw new RangeError('stations must run from aft to forward');
+    if (s.y.length < 2 || s.y.length !== s.z.length)
+      throw new RangeError(`station at x = ${s.x} m needs two or more points`);
+    if (s.y.some((y) => !(y >= 0)))
+      throw new RangeError(`station at x = ${s.x} m has a negative half-breadth`);
+  });
+  const x = Float64Array.from(stations, (s) => s.x);
+  const polygonY: Float64Array[] = [];
+  const polygonZ: Float64Array[] = [];
+  for (const s of stations) {
+    const k = s.y.length;
+    const y = new Float64Array(2 * k);
+    const z = new Float64Array(2 * k);
+    for (let i = 0; i < k; i++) {
+      y[i] = s.y[i]!;
+      z[i] = s.z[i]!;
+      y[2 * k - 1 - i] = -s.y[i]!;
+      z[2 * k - 1 - i] = s.z[i]!;
+    }
+    polygonY.push(y);
+    polygonZ.push(z);
+  }
+  return { lines, x, weight: stationWeights(x), polygonY, polygonZ };
+}
+
+/** Clips every section at the waterplane and integrates: exact for the polygons, Simpson along the hull. */
+export function immerse(p: PreparedLines, f: Flotation): Immersed {
+  const { x, weight, polygonY, polygonZ } = p;
+  const n = x.length;
+  const sin = Math.sin(f.heel);
+  const cos = Math.cos(f.heel);
+  const slope = Math.tan(f.trim);
+  const sections = new Float64Array(n);
+  let volume = 0;
+  let mx = 0;
+  let my = 0;
+  let mz = 0;
+  let plane = 0;
+  let planeX = 0;
+  let planeY = 0;
+  let planeXX = 0;
+  let planeYY = 0;
+  for (let i = 0; i < n; i++) {
+    const water = f.height + x[i]! * slope;
+    const py = polygonY[i]!;
+    const pz = polygonZ[i]!;
+    const m = py.length;
+    // Green's theorem over the clipped outline; the closing runs along the water are horizontal.
+    let area = 0;
+    let ay = 0;
+    let az = 0;
+    let b = 0;
+    let by = 0;
+    let byy = 0;
+    let y0 = py[m - 1]! * cos + pz[m - 1]! * sin;
+    let z0 = pz[m - 1]! * cos - py[m - 1]! * sin - water;
+    for (let k = 0; k < m; k++) {
+      const y1 = py[k]! * cos + pz[k]! * sin;
+      const z1 = pz[k]! * cos - py[k]! * sin - water;
+      let [ya, za, yb, zb] = [y0, z0, y1, z1];
+      const under0 = z0 <= 0;
+      const under1 = z1 <= 0;
+      if (under0 !== under1) {
+        const t = z0 / (z0 - z1);
+        const yc = y0 + t * (y1 - y0);
+        // Crossing: the waterline's ends, signed by direction so that widths add up over several pieces.
+        const s = under1 ? -1 : 1;
+        b += s * yc;
+        by += s * 0.5 * yc * yc;
+        byy += (s * yc * yc * yc) / 3;
+        if (under0) {
+          yb = yc;
+          zb = 0;
+        } else {
+          ya = yc;
+          za = 0;
+        }
+      }
+      if (under0 || under1) {
+        // With z measured from the water, closing edges at z = 0 add nothing to integrals of z dy.
+        const dy = yb - ya;
+        area -= 0.5 * (za + zb) * dy;
+        az -= (dy * (za * za + za * zb + zb * zb)) / 6;
+        ay -= (dy * (za * (2 * ya + yb) + zb * (ya + 2 * yb))) / 6;
+      }
+      y0 = y1;
+      z0 = z1;
+    }
+    // Outline direction: keel to leeward sheer and over the deck back; make areas positive.
+    const sign = area < 0 ? -1 : 1;
+    area *= sign;
+    ay *= sign;
+    az *= sign;
+    if (b < 0) {
+      b = -b;
+      by = -by;
+      byy = -byy;
+    }
+    const w = weight[i]!;
+    sections[i] = area;
+    volume += w * area;
+    mx += w * area * x[i]!;
+    my += w * ay;
+    mz += w * (az + area * water);
+    plane += w * b;
+    planeX += w * b * x[i]!;
+    planeY += w * by;
+    planeXX += w * b * x[i]! * x[i]!;
+    planeYY += w * byy;
+  }
+  const safe = volume > 0 ? volume : Number.NaN;
+  return {
+    volume,
+    x: mx / safe,
+    y: my / safe,
+    z: mz / safe,
+    waterplane: plane,
+    flotationX: planeX / plane,
+    transverse: planeYY - (planeY * planeY) / plane,
+    longitudinal: planeXX - (planeX * planeX) / plane,
+    sections,
+  };
+}
+
+/** Volume, and centre (x, z) of the load, that a hull must carry. */
+export interface FloatRequest {
+  readonly volume: number;
+  readonly x: number;
+  readonly z: number;
+}
+
+/**
+ * Sinkage and trim at a heel such that the volume carries the weight and the centre of buoyancy lies under the centre
+ * of gravity fore and aft: Newton with the waterplane as its matrix.
+ * @throws RangeError when no flotation is found (the hull would sink or stand on end)
+ */
+export function floatAt(
+  p: PreparedLines,
+  request: FloatRequest,
+  heel: number,
+  start: { height: number; trim: number } = { height: 0, trim: 0 },
+): { flotation: Flotation; immersed: Immersed } {
+  let { height, trim } = start;
+  const length = p.x[p.x.length - 1]! - p.x[0]!;
+  const cos = Math.cos(heel);
+  const zG = request.z * cos;
+  for (let i = 0; i < 80; i++) {
+    const im = immerse(p, { heel, height, trim });
+    if (!(im.volume > 0) || !(im.waterplane > 0)) {
+      height += 0.02 * length;
+      continue;
+    }
+    const tan = Math.tan(trim);
+    const f1 = im.volume - request.volume;
+    const f2 = im.volume * (im.x - request.x + (im.z - zG) * tan);
+    if (Math.abs(f1) < 1e-13 * request.volume && Math.abs(f2) < 1e-13 * request.volume * length) {
+      return { flotation: { heel, height, trim }, immersed: im };
+    }
+    const xf = im.flotationX;
+    const a11 = im.waterplane;
+    const a12 = im.waterplane * xf;
+    const a21 = im.waterplane * (xf - request.x + (height + xf * tan - zG) * tan);
+    const a22 =
+      im.longitudinal +
+      im.waterplane * xf * (xf - request.x + (height + xf * tan - zG) * tan) +
+      im.volume * (im.z - zG);
+    const det = a11 * a22 - a12 * a21;
+    let dh = -(f1 * a22 - a12 * f2) / det;
+    let dt = -(a11 * f2 - a21 * f1) / det;
+    const most = 0.03 * length;
+    if (!(Math.abs(dh) < most)) dh = Math.sign(dh) * most;
+    if (!(Math.abs(dt) < 0.05)) dt = Math.sign(dt) * 0.05;
+    if (!Number.isFinite(dh) || !Number.isFinite(dt)) break;
+    height += dh;
+    trim += dt;
+    if (Math.abs(dh) < 1e-14 * length && Math.abs(dt) < 1e-14) {
+      return { flotation: { heel, height, trim }, immersed: immerse(p, { heel, height, trim }) };
+    }
+  }
+  // Round-off can keep the last digits moving: accept what balances to 1e-9.
+  const im = immerse(p, { heel, height, trim });
+  const off =
+    Math.abs(im.volume / request.volume - 1) +
+    Math.abs(im.x - request.x + (im.z - zG) * Math.tan(trim)) / length;
+  if (off < 1e-9) return { flotation: { heel, height, trim }, immersed: im };
+  throw new RangeError(
+    `the hull does not float: ${request.volume.toFixed(4)} m3 at x = ${request.x.toFixed(3)} m finds no balance at ${((heel * 180) / Math.PI).toFixed(0)} deg of heel`,
+  );
+}
+
+/** Righting arm [m] at a flotation of a load whose centre is z above the design waterline on the centreline. */
+export function rightingArmOf(im: Immersed, heel: number, z: number): number {
+  return im.y - z * Math.sin(heel);
+}
+
+/**
+ * Wetted area [m2] at a flotation: triangles between neighbouring stations, each clipped at the water. The end faces
+ * are not counted. Sections need equal numbers of points (see `resampled`).
+ */
+export function wettedArea(p: PreparedLines, f: Flotation): number {
+  const { x } = p;
+  const sin = Math.sin(f.heel);
+  const cos = Math.cos(f.heel);
+  const slope = Math.tan(f.trim);
+  let total = 0;
+  const tri = new Float64Array(9);
+  for (let i = 0; i + 1 < x.length; i++) {
+    const [ya, za, yb, zb] = [p.polygonY[i]!, p.polygonZ[i]!, p.polygonY[i + 1]!, p.polygonZ[i + 1]!];
+    const m = ya.length;
+    const half = m / 2;
+    for (let k = 0; k < m; k++) {
+      const l = (k + 1) % m;
+      // Skip the deck (between the two sheers) and the seam at the keel of a closed bottom.
+      if (k === half - 1) continue;
+      for (const [s0, k0, s1, k1, s2, k2] of [
+        [0, k, 1, k, 1, l],
+        [0, k, 1, l, 0, l],
+      ] as const) {
+        put(tri, 0, x[i + s0]!, s0 ? yb[k0]! : ya[k0]!, s0 ? zb[k0]! : za[k0]!);
+        put(tri, 3, x[i + s1]!, s1 ? yb[k1]! : ya[k1]!, s1 ? zb[k1]! : za[k1]!);
+        put(tri, 6, x[i + s2]!, s2 ? yb[k2]! : ya[k2]!, s2 ? zb[k2]! : za[k2]!);
+        total += clippedTriangle(tri, sin, cos, f.height, slope);
+      }
+    }
+  }
+  return total;
+}
+
+function put(t: Float64Array, at: number, x: number, y: number, z: number): void {
+  t[at] = x;
+  t[at + 1] = y;
+  t[at + 2] = z;
+}
+
+/** Area of the part of a triangle under the water. */
+function clippedTriangle(t: Float64Array, sin: number, cos: number, height: number, slope: number): number {
+  const d0 = t[2]! * cos - t[1]! * sin - height - t[0]! * slope;
+  const d1 = t[5]! * cos - t[4]! * sin - height - t[3]! * slope;
+  const d2 = t[8]! * cos - t[7]! * sin - height - t[6]! * slope;
+  const ux = t[3]! - t[0]!;
+  const uy = t[4]! - t[1]!;
+  const uz = t[5]! - t[2]!;
+  const vx = t[6]! - t[0]!;
+  const vy = t[7]! - t[1]!;
+  const vz = t[8]! - t[2]!;
+  const cx = uy * vz - uz * vy;
+  const cy = uz * vx - ux * vz;
+  const cz = ux * vy - uy * vx;
+  const area = 0.5 * Math.sqrt(cx * cx + cy * cy + cz * cz);
+  const under = (d0 <= 0 ? 1 : 0) + (d1 <= 0 ? 1 : 0) + (d2 <= 0 ? 1 : 0);
+  if (under === 3) return area;
+  if (under === 0) return 0;
+  // The share cut off at the odd corner: product of the two edge shares.
+  const share = (a: number, b: number, c: number): number => (a / (a - b)) * (a / (a - c));
+  if (under === 1) {
+    if (d0 <= 0) return area * share(d0, d1, d2);
+    if (d1 <= 0) return area * share(d1, d0, d2);
+    return area * share(d2, d0, d1);
+  }
+  if (d0 > 0) return area * (1 - share(d0, d1, d2));
+  if (d1 > 0) return area * (1 - share(d1, d0, d2));
+  return area * (1 - share(d2, d0, d1));
+}
+
+/** The same hull with every half section drawn with k points evenly along its girth; unchanged if counts agree. */
+export function resampled(lines: Lines, k = 33): Lines {
+  const first = lines.stations[0]!.y.length;
+  if (lines.stations.every((s) => s.y.length === first)) return lines;
+  return {
+    stations: lines.stations.map((s) => {
+      const along = [0];
+      for (let i = 1; i < s.y.length; i++) {
+        along.push(along[i - 1]! + Math.hypot(s.y[i]! - s.y[i - 1]!, s.z[i]! - s.z[i - 1]!));
+      }
+      const total = along[along.length - 1]!;
+      const y: number[] = [];
+      const z: number[] = [];
+      let j = 0;
+      for (let i = 0; i < k; i++) {
+        const target = (total * i) / (k - 1);
+        while (j < along.length - 2 && along[j + 1]! < target) j++;
+        const span = along[j + 1]! - along[j]!;
+        const t = span > 0 ? (target - along[j]!) / span : 0;
+        y.push(s.y[j]! + t * (s.y[j + 1]! - s.y[j]!));
+        z.push(s.z[j]! + t * (s.z[j + 1]! - s.z[j]!));
+      }
+      return { x: s.x, y, z };
+    }),
+  };
+}

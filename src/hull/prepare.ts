@@ -1,0 +1,331 @@
+import { hermite, pchip, pchipSlopes, symmetricSpline } from '../numerics/index.js';
+import { DELFT_1998, type DelftHull, residuaryDelft1998 } from './delft-1998.js';
+import { DELFT_2008, residuaryDelft2008 } from './delft-2008.js';
+import { DELFT_HEEL, HEEL_BEAM_DRAFT_LIMIT, heelFactor, heelResiduary20 } from './delft-heel.js';
+import { DELFT_KEEL, keelHeelCoefficient, keelResiduary } from './delft-keel.js';
+import { frictionCoefficientIttc57 } from './friction.js';
+import {
+  type Flotation,
+  floatAt,
+  type Immersed,
+  prepareLines,
+  resampled,
+  rightingArmOf,
+  wettedArea,
+} from './hydrostatics.js';
+import { leastPlaningDrag, ROUND_BILGE_FACTOR } from './savitsky.js';
+import {
+  HULL,
+  type Hull,
+  type HullForm,
+  type HullLoad,
+  type HullOptions,
+  type Lines,
+  type RangeWarning,
+} from './types.js';
+
+const DEG = Math.PI / 180;
+/** Heel stations of the tables. */
+const HEEL_STEP = 2.5 * DEG;
+const HEEL_COUNT = 25;
+/** Froude grid of the resistance tables; beyond its end forces go on in proportion to V^2. */
+const FN_STEP = 0.01;
+const FN_COUNT = 261;
+/** Share of Lwl that ITTC-57 takes as the length of friction for yachts (common practice with the Delft series). */
+const FRICTION_LENGTH = 0.7;
+
+function smoothstep(x: number): number {
+  const t = Math.min(1, Math.max(0, x));
+  return t * t * (3 - 2 * t);
+}
+
+/** Largest section, waterline length and beam, draft and coefficients of the hull as it floats upright. */
+function formOf(
+  p: ReturnType<typeof prepareLines>,
+  f: Flotation,
+  im: Immersed,
+  wetted: number,
+  z: number,
+): HullForm {
+  const { x } = p;
+  const slope = Math.tan(f.trim);
+  const n = x.length;
+  let draft = 0;
+  let bwl = 0;
+  let first = x[0]!;
+  let last = x[n - 1]!;
+  const keel = new Float64Array(n);
+  for (let i = 0; i < n; i++) {
+    const water = f.height + x[i]! * slope;
+    const s = p.lines.stations[i]!;
+    let lowest = Number.POSITIVE_INFINITY;
+    for (let k = 0; k < s.z.length; k++) lowest = Math.min(lowest, s.z[k]!);
+    keel[i] = lowest - water;
+    if (keel[i]! < 0) {
+      draft = Math.max(draft, -keel[i]!);
+      // Breadth at the water: linear between the points that straddle it.
+      for (let k = 0; k + 1 < s.z.length; k++) {
+        const a = s.z[k]! - water;
+        const b = s.z[k + 1]! - water;
+        if (a <= 0 !== b <= 0) {
+          const t = a / (a - b);
+          bwl = Math.max(bwl, 2 * (s.y[k]! + t * (s.y[k + 1]! - s.y[k]!)));
+        }
+      }
+    }
+  }
+  // Ends of the waterline where the keel line comes out of the water.
+  for (let i = 0; i + 1 < n; i++) {
+    const [a, b] = [keel[i]!, keel[i + 1]!];
+    if (a > 0 && b <= 0) first = Math.max(first, x[i]! + (a / (a - b)) * (x[i + 1]! - x[i]!));
+    if (a <= 0 && b > 0) last = Math.min(last, x[i]! + (a / (a - b)) * (x[i + 1]! - x[i]!));
+  }
+  const lwl = last - first;
+  const most = Math.max(...im.sections);
+  return {
+    lwl,
+    bwl,
+    canoeDraft: draft,
+    volume: im.volume,
+    waterplane: im.waterplane,
+    wetted,
+    cp: im.volume / (most * lwl),
+    cm: most / (bwl * draft),
+    cwp: im.waterplane / (lwl * bwl),
+    lcbFromForward: last - im.x,
+    lcfFromForward: last - im.flotationX,
+    kb: im.z + draft - f.height,
+    bm: im.transverse / im.volume,
+    gm: im.z + im.transverse / im.volume - z,
+    trim: f.trim,
+  };
+}
+
+function rangeWarnings(form: HullForm, options: HullOptions, maxFn: boolean): RangeWarning[] {
+  const out: RangeWarning[] = [];
+  const is98 = options.residuary === 'delft-1998';
+  const method = is98 ? 'Delft residuary resistance, 1998' : 'Delft residuary resistance, 2008';
+  const say = (
+    parameter: string,
+    value: number,
+    low: number,
+    high: number,
+    treatment: string,
+    m = method,
+  ): void => {
+    if (!(value >= low && value <= high))
+      out.push({ method: m, parameter, value, range: [low, high], treatment });
+  };
+  const used = 'computed outside its range';
+  if (!options.measured) {
+    say('Lwl/Bwl', form.lwl / form.bwl, is98 ? 2.76 : 2.73, 5, used);
+    say('Bwl/Tc', form.bwl / form.canoeDraft, 2.46, is98 ? 19.32 : 19.38, used);
+    say('Lwl/volume^(1/3)', form.lwl / Math.cbrt(form.volume), 4.34, 8.5, used);
+    say('LCB aft of amidships [%]', 100 * (form.lcbFromForward / form.lwl - 0.5), 0, is98 ? 6 : 8.2, used);
+    if (!is98) say('LCF aft of amidships [%]', 100 * (form.lcfFromForward / form.lwl - 0.5), 1.8, 9.5, used);
+    say('Cp', form.cp, 0.52, 0.6, used);
+    if (!is98) {
+      say('Cm', form.cm, 0.65, 0.78, used);
+      say('Aw/volume^(2/3)', form.waterplane / form.volume ** (2 / 3), 3.78, 12.67, used);
+    }
+    say(
+      'Bwl/Tc',
+      form.bwl / form.canoeDraft,
+      2.46,
+      HEEL_BEAM_DRAFT_LIMIT,
+      `held at ${HEEL_BEAM_DRAFT_LIMIT}`,
+      'Delft increase of residuary resistance with heel, 1998',
+    );
+    if (maxFn) {
+      out.push({
+        method,
+        parameter: 'Froude number',
+        value: FN_STEP * (FN_COUNT - 1),
+        range: [is98 ? 0.1 : 0.15, 0.6],
+        treatment: 'ratio held above 0.60; planing takes over where the hull planes',
+      });
+    }
+  }
+  return out;
+}
+
+/**
+ * A hull floating at its load, with resistance and righting arm tabulated for quick and smooth evaluation.
+ * Friction: ITTC-57 on 0.7 Lwl and the heeled wetted area, no form factor. Residuary: the Delft regression of the
+ * floating hull, clipped at zero, monotone between rows, fading below the first and held above Fn 0.60. Planing: blend
+ * to Savitsky's least drag by w = smoothstep((FnVol - 1.5) / 1.0), then the running maximum over speed.
+ * @throws RangeError when the hull cannot carry the load
+ */
+export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions): Hull {
+  const { water, gravity } = options;
+  const p = prepareLines(resampled(lines));
+  const request = { volume: load.mass / water.density, x: load.x, z: load.z };
+  const upright = floatAt(p, request, 0);
+  const sheer = Math.min(
+    ...p.lines.stations.map(
+      (s) => s.z[s.z.length - 1]! - upright.flotation.height - s.x * Math.tan(upright.flotation.trim),
+    ),
+  );
+  if (sheer < 0) throw new RangeError(`the hull floats with its sheer ${(-sheer).toFixed(2)} m under water`);
+
+  const arms: number[] = [];
+  const areas: number[] = [];
+  let at = { height: upright.flotation.height, trim: upright.flotation.trim };
+  for (let i = 0; i < HEEL_COUNT; i++) {
+    const heel = i * HEEL_STEP;
+    const f = floatAt(p, request, heel, at);
+    at = { height: f.flotation.height, trim: f.flotation.trim };
+    arms.push(rightingArmOf(f.immersed, heel, load.z));
+    areas.push(wettedArea(p, f.flotation));
+  }
+  const righting = symmetricSpline('odd', HEEL_STEP, arms);
+  const wettedBy = symmetricSpline('even', HEEL_STEP, areas);
+  const form = formOf(p, upright.flotation, upright.immersed, areas[0]!, load.z);
+
+  const delft: DelftHull = form;
+  const weight = load.mass * gravity;
+  const scale = Math.sqrt(gravity * form.lwl);
+  const rr = (() => {
+    const is98 = options.residuary === 'delft-1998';
+    const fn: number[] = [...(is98 ? DELFT_1998.Fn : DELFT_2008.Fn)];
+    const ratio = (is98 ? residuaryDelft1998(delft) : residuaryDelft2008(delft)).map((v) => Math.max(0, v));
+    while (fn[fn.length - 1]! > 0.6 + 1e-9) {
+      fn.pop();
+      ratio.pop();
+    }
+    // Below the first row the waves fade faster than any table shows: the fourth power of Froude number (judgement).
+    const f0 = fn[0]!;
+    return pchip([0, 0.5 * f0, ...fn], [0, ratio[0]! * 0.5 ** 4, ...ratio]);
+  })();
+  const heel20 = pchip(
+    [0, 0.2, ...DELFT_HEEL.Fn],
+    [0, 0, ...heelResiduary20(delft).map((v) => Math.max(0, v))],
+  );
+  const keel = options.keel;
+  const keelWeight = keel ? keel.volume * water.density * gravity : 0;
+  const keelUpright = keel
+    ? pchip([0, 0.15, ...DELFT_KEEL.Fn], [0, 0, ...keelResiduary(delft, keel).map((v) => Math.max(0, v))])
+    : undefined;
+  const keelHeel = keel ? Math.max(0, keelHeelCoefficient(delft, keel.draft)) : 0;
+  const measured = options.measured
+    ? pchip([0, ...options.measured.speed], [0, ...options.measured.force])
+    : undefined;
+
+  // Parts over weight on the Froude grid.
+  const friction = new Float64Array(FN_COUNT);
+  const residuary = new Float64Array(FN_COUNT);
+  const planing = new Float64Array(FN_COUNT);
+  const heeling = new Float64Array(FN_COUNT);
+  const keeling = new Float64Array(FN_COUNT);
+  const volumeScale = Math.sqrt(gravity * Math.cbrt(form.volume));
+  const deadrise = Math.atan((4 * (1 - form.cm) * form.canoeDraft) / form.bwl) / DEG;
+  const transom = p.x[0]!;
+  const reach: readonly [number, number] = options.centreReach
+    ? [options.centreReach[0] - transom, options.centreReach[1] - transom]
+    : [load.x - transom, load.x - transom];
+  let running = 0;
+  for (let i = 0; i < FN_COUNT; i++) {
+    const fn = i * FN_STEP;
+    const v = fn * scale;
+    const q = 0.5 * water.density * v * v;
+    if (measured) {
+      residuary[i] = measuredForce(measured, v) / weight;
+    } else {
+      const re = (v * FRICTION_LENGTH * form.lwl) / water.kinematicViscosity;
+      friction[i] = (q * areas[0]! * frictionCoefficientIttc57(re)) / weight;
+      residuary[i] = rr.value(fn);
+      const displacement = friction[i]! + residuary[i]!;
+      let total = displacement;
+      let w = 0;
+      if (options.planing) {
+        w = smoothstep(v / volumeScale - 1.5);
+        if (w > 0) {
+          const s = leastPlaningDrag(
+            {
+              weight,
+              beam: 0.9 * form.bwl,
+              deadrise,
+              speed: v,
+              density: water.density,
+              kinematicViscosity: water.kinematicViscosity,
+              gravity,
+            },
+            form.lwl,
+            reach,
+          );
+          total = (1 - w) * displacement + (w * ROUND_BILGE_FACTOR * s.drag) / weight;
+        }
+      }
+      // A displacement hull's own curve may dip too where the table does: the running maximum holds for both.
+      running = Math.max(running, total);
+      planing[i] = running - displacement;
+      heeling[i] = heel20.value(fn) * (1 - w);
+    }
+    keeling[i] = keelUpright ? (keelUpright.value(fn) * keelWeight) / weight : 0;
+  }
+  const grid = Float64Array.from({ length: FN_COUNT }, (_, i) => i * FN_STEP);
+  // The total is monotone; its parts are interpolated with the planing part as the rest, so that they add up to it.
+  const totalUpright = friction.map((f, i) => f + residuary[i]! + planing[i]!);
+  const slopes = {
+    friction: pchipSlopes(grid, friction),
+    residuary: pchipSlopes(grid, residuary),
+    total: pchipSlopes(grid, totalUpright),
+    heeling: pchipSlopes(grid, heeling),
+    keeling: pchipSlopes(grid, keeling),
+  };
+  const last = FN_COUNT - 1;
+  const inverseStep = 1 / FN_STEP;
+  const inverseWetted = 1 / areas[0]!;
+  const rounding = 0.02;
+
+  const resistanceInto = (speed: number, heel: number, out: Float64Array): number => {
+    const fn = speed / scale;
+    let extra = 1;
+    let i = Math.floor(fn * inverseStep);
+    let t = fn * inverseStep - i;
+    if (i >= last) {
+      extra = (fn / grid[last]!) ** 2;
+      i = last - 1;
+      t = 1;
+    } else if (i < 0) {
+      i = 0;
+      t = 0;
+    }
+    const at = (y: Float64Array, d: Float64Array): number =>
+      weight * extra * hermite(t, FN_STEP, y[i]!, y[i + 1]!, d[i]!, d[i + 1]!);
+    const f = at(friction, slopes.friction);
+    const r = at(residuary, slopes.residuary);
+    const u = at(totalUpright, slopes.total);
+    const smoothHeel = Math.sqrt(heel * heel + rounding * rounding) - rounding;
+    out[HULL.friction] = f * wettedBy.value(heel) * inverseWetted;
+    out[HULL.residuary] = r;
+    out[HULL.planing] = u - f - r;
+    out[HULL.heel] = at(heeling, slopes.heeling) * heelFactor(heel);
+    out[HULL.keelResiduary] = at(keeling, slopes.keeling);
+    out[HULL.keelHeel] = keelWeight * keelHeel * Math.min(fn, 0.6) ** 2 * smoothHeel;
+    return (
+      out[HULL.friction]! +
+      out[HULL.residuary]! +
+      out[HULL.planing]! +
+      out[HULL.heel]! +
+      out[HULL.keelResiduary]! +
+      out[HULL.keelHeel]!
+    );
+  };
+
+  return {
+    form,
+    warnings: rangeWarnings(form, options, options.planing),
+    heelMax: (HEEL_COUNT - 1) * HEEL_STEP,
+    rightingArm: (heel) => righting.value(heel),
+    wetted: (heel) => wettedBy.value(heel),
+    resistanceInto,
+  };
+}
+
+/** A measured curve at a speed; beyond its last point in proportion to V^2. */
+function measuredForce(curve: ReturnType<typeof pchip>, v: number): number {
+  const n = curve.x.length - 1;
+  const top = curve.x[n]!;
+  return v <= top ? curve.value(v) : curve.y[n]! * (v / top) ** 2;
+}
