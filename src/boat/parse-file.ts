@@ -95,16 +95,20 @@ export function parseBoatFile(
   const doc = list[0]!;
   const troubles = list.flatMap((d) => [...d.errors, ...d.warnings]);
   if (troubles.length > 0) {
+    const rows = text.split('\n');
     for (const trouble of troubles.slice(0, 50)) {
-      const { line, col } = lines.linePos(trouble.pos[0]);
-      const content = text.split('\n')[line - 1] ?? '';
-      const key = /^\s*(?:-\s+)?([^\s:#'"[{][^:#]{0,40}):/.exec(content)?.[1] ?? '';
+      let { line, col } = lines.linePos(trouble.pos[0]);
+      // An unclosed bracket is noticed at the end of the text: point at the last line that says something.
+      while (line > 1 && (rows[line - 1] ?? '').trim() === '') {
+        line--;
+        col = 1;
+      }
       problems.add({
-        line,
+        line: Math.max(1, line),
         column: Math.max(1, col),
-        key,
+        key: keyAround(rows, line),
         message: trouble.message.split('\n')[0]!.replace(/\.$/, ''),
-        hint: yamlHint(trouble.code, content),
+        hint: yamlHint(trouble.code, trouble.message, rows[line - 1] ?? ''),
       });
     }
     problems.throwIfAny();
@@ -327,6 +331,19 @@ export function parseBoatFile(
   return { value, problems, complain };
 }
 
+/** Path of keys around a line of a text that is no sound YAML, judged by the indents. */
+function keyAround(rows: readonly string[], line: number): string {
+  const keys: string[] = [];
+  let indent = Number.POSITIVE_INFINITY;
+  for (let i = line - 1; i >= 0 && i > line - 200 && indent > 0; i--) {
+    const found = /^(\s*)([A-Za-z_][\w -]{0,40}):/.exec(rows[i] ?? '');
+    if (found === null || found[1]!.length >= indent) continue;
+    keys.unshift(found[2]!);
+    indent = found[1]!.length;
+  }
+  return keys.join('.');
+}
+
 /** Units people mix up, as factors to the bare unit of the kind. */
 const MIX_UPS: Partial<Record<QuantityField['kind'], readonly (readonly [string, number])[]>> = {
   length: [
@@ -400,8 +417,9 @@ function hintOf(field: Field): string {
   );
 }
 
-function yamlHint(code: string, content: string): string {
+function yamlHint(code: string, message: string, content: string): string {
   if (content.includes('\t')) return 'indent with spaces, not with tabs';
+  if (/^Flow /.test(message)) return 'a bracket or brace may be missing';
   switch (code) {
     case 'BAD_INDENT':
       return 'entries of one section must stand under each other';

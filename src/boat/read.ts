@@ -599,7 +599,7 @@ function readCrew(
     );
   }
   const armLee = -est.pick(['crew', 'arm_leeward'], c.arm_leeward, () => 0.35 * b.beamMax);
-  const aft = est.pick(['crew', 'aft_of_stem'], c.aft_of_stem, () => 0.62 * lwl);
+  const aft = est.pick(['crew', 'aft_of_stem'], c.aft_of_stem, () => (style === 'rail' ? 0.62 : 0.56) * lwl);
   const foremost = est.pick(['crew', 'foremost'], c.foremost, () => Math.max(0, aft - 0.12 * lwl));
   const aftmost = est.pick(['crew', 'aftmost'], c.aftmost, () =>
     Math.max(aft, Math.min(0.95 * lwl, aft + 0.2 * lwl)),

@@ -370,7 +370,7 @@ export const boatFile = {
           type: 'quantity',
           kind: 'length',
           range: [0, 30],
-          missing: { rule: '62 % of the waterline length (judgement)' },
+          missing: { rule: '62 % of the waterline length on the rail, 56 % otherwise (judgement)' },
           describe: `Common centre of the crew when trimmed for the design waterline, ${AFT}.`,
         },
         foremost: {

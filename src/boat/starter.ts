@@ -92,10 +92,10 @@ function writeSection(
       if (inner.type === 'section') {
         out.push(`${pad}# ${key}:`);
         for (const [name, f] of Object.entries(inner.keys) as [string, Field][]) {
-          comment(explain(f), `${pad}#   `, out, '');
+          comment(explain(f), `${pad}#   `, out);
           out.push(`${pad}#   ${name}:`);
         }
-      } else if (inner.type !== 'list' && inner.type !== 'named') {
+      } else {
         out.push(`${pad}# ${key}:`);
       }
       continue;
@@ -133,7 +133,8 @@ function writeShort(name: string, entry: string | Values, depth: number, out: st
   for (const [key, value] of Object.entries(entry)) writeShort(key, value, depth + 1, out);
 }
 
-function comment(text: string, pad: string, out: string[], mark = '# '): void {
+function comment(text: string, pad: string, out: string[]): void {
+  const mark = '# ';
   let line = '';
   for (const word of text.split(' ')) {
     if (line !== '' && pad.length + mark.length + line.length + word.length + 1 > WIDTH) {
