@@ -160,15 +160,24 @@ function buildSpec(file: BoatFileValue, est: Estimator, complain: Complain): Boa
   });
   const weights = readWeights(file, est, x, { keel, freeboard, mastX: rig.mastX, mastTop: rig.mastTop });
 
-  const crewAft = crew.aft;
-  const lcbAft = (() => {
-    const given = file.hull.buoyancy_aft_of_stem;
-    if (given !== undefined) return given / lwl - 0.5;
-    const moment = weights.reduce((sum, w) => sum + w.mass * w.x, 0) + crew.spec.mass * x(crewAft);
-    const aft = Math.min(0.06, Math.max(0, -moment / mass / lwl));
-    est.record(['hull', 'buoyancy_aft_of_stem'], (0.5 + aft) * lwl);
-    return aft;
-  })();
+  const moment = weights.reduce((sum, w) => sum + w.mass * w.x, 0) + crew.spec.mass * x(crew.aft);
+  const centreAft = 0.5 - moment / mass / lwl;
+  if (!(centreAft > 0.35 && centreAft < 0.7)) {
+    const farthest = [...weights].sort((p, q) => Math.abs(q.mass * q.x) - Math.abs(p.mass * p.x))[0]!;
+    complain(
+      ['weights', farthest.name, 'aft_of_stem'],
+      `the centre of mass of boat and crew lies at ${Math.round(100 * centreAft)} % of the waterline length, outside 35 to 70 %`,
+      'places are measured aft from the fore end of the waterline',
+    );
+  }
+  const lcbAft =
+    est.pick(
+      ['hull', 'buoyancy_aft_of_stem'],
+      file.hull.buoyancy_aft_of_stem,
+      () => lwl * Math.min(0.56, Math.max(0.5, centreAft)),
+    ) /
+      lwl -
+    0.5;
   if (!(lcbAft >= -0.1 && lcbAft <= 0.15)) {
     complain(
       ['hull', 'buoyancy_aft_of_stem'],

@@ -111,7 +111,7 @@ export const brokenBoats: readonly BrokenBoat[] = [
     text: `${soundDinghy}---\n${soundDinghy}`,
     expect: /:\d+:\d+ file: .*more than one document; one boat a file/,
   },
-  { name: 'a routing of brackets', text: `note: ${'['.repeat(5000)}`, expect: /:1:1 .*nested too deeply; / },
+  { name: 'a row of brackets', text: `note: ${'['.repeat(5000)}`, expect: /:1:1 .*nested too deeply; / },
   { name: 'a stair of dashes', text: `note:\n${'- '.repeat(5000)}x`, expect: /:2:1 .*nested too deeply; / },
   {
     name: 'deep braces in a value',
@@ -530,5 +530,11 @@ export const brokenBoats: readonly BrokenBoat[] = [
     name: 'a roughness for the power law',
     text: keelboat('hull:\n', 'wind: { profile: power, roughness: 0.2 mm }\nhull:\n'),
     expect: /:2:\d+ wind\.roughness: the power profile has no roughness; /,
+  },
+  {
+    name: 'a mast in the wake',
+    text: keelboat('rig: { mass: 80 kg }', 'rig: { mass: 600 kg, aft_of_stem: 30 m }'),
+    expect:
+      /:8:\d+ weights\.rig\.aft_of_stem: the centre of mass of boat and crew lies at .* outside 35 to 70 %; places/,
   },
 ];
