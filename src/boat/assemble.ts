@@ -85,6 +85,7 @@ export function assembleBoat(input: { spec: BoatSpec; estimates?: readonly Estim
     keel: spec.keel,
     rudder: spec.rudder,
     canoeDraft: hull.form.canoeDraft,
+    sidewaysVolume: hull.form.sidewaysVolume,
     water: spec.water,
     hoistRange: spec.boardRange,
   });

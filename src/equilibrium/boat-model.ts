@@ -29,6 +29,15 @@ export interface BoatModel extends ForceModel {
 
 /** Lowest heel [rad] offered to the solver: a little to windward. Judgement. */
 const HEEL_TO_WINDWARD = (-5 * Math.PI) / 180;
+/**
+ * Heel [rad] that crews allow off the wind, reached between these true wind angles: the hull regressions reward heel
+ * there more than any helmsman would (judgement).
+ */
+const HEEL_OFF_WIND = {
+  limit: (10 * Math.PI) / 180,
+  start: (100 * Math.PI) / 180,
+  end: (140 * Math.PI) / 180,
+};
 /** Largest depower value: the price is then 199 over the sails' height, which leaves next to nothing. */
 const DEPOWER_MAX = 0.995;
 
@@ -65,6 +74,16 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
   limit(X.rudder, -spec.limits.rudder, spec.limits.rudder);
   limit(X.depower, 0, DEPOWER_MAX);
   limit(X.arm, spec.crew.armLee, spec.crew.armOut);
+
+  const heelLimit = upper[X.heel]!;
+  const prepare = (_tws: number, twa: number): void => {
+    const t = Math.min(
+      1,
+      Math.max(0, (twa - HEEL_OFF_WIND.start) / (HEEL_OFF_WIND.end - HEEL_OFF_WIND.start)),
+    );
+    const most = Math.min(heelLimit, HEEL_OFF_WIND.limit);
+    upper[X.heel] = heelLimit + (most - heelLimit) * t * t * (3 - 2 * t);
+  };
 
   const price = (depower: number): number => depower / (1 - depower) / priceHeight;
 
@@ -178,6 +197,7 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
     forces,
     bounds: { lower, upper },
     speedScale: Math.sqrt(g * length),
+    prepare,
     residualInto,
     sideConditions: 2,
     sideConditionsInto,

@@ -37,6 +37,7 @@ export function describeState(set: SetSolver, tws: number, twa: number, s: Solut
   const { model, sailSet } = set;
   const { x } = s;
   const res = new Float64Array(RES.count);
+  model.prepare?.(tws, twa);
   model.residualInto(tws, twa, x, res);
   const speed = x[X.speed]!;
   const leeway = x[X.leeway]!;

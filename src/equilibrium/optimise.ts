@@ -40,7 +40,9 @@ const BASIC = [X.speed, X.leeway, X.rudder, X.arm] as const;
 /** Ties are broken towards full power and upright by this share of speed: far below any shown digit. */
 const TIE = 1e-6;
 const RESIDUAL_TOLERANCE = 1e-10;
-const MAX_ITERATIONS = 60;
+const MAX_ITERATIONS = 40;
+/** Gain in speed, as a share, below which a corner of the model may end the search. */
+const CORNER_GAIN = 2e-5;
 
 export function finiteDifferenceJacobian(
   model: ForceModel,
@@ -108,6 +110,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
   };
 
   const run = (tws: number, twa: number, start: Float64Array): Attempt => {
+    model.prepare?.(tws, twa);
     const x = new Float64Array(X.count);
     for (let j = 0; j < X.count; j++) {
       x[j] = j === X.arm ? start[j]! : Math.min(upper[j]!, Math.max(lower[j]!, start[j]!));
@@ -132,6 +135,22 @@ export function createOptimiser(model: ForceModel): Optimiser {
     let speedSlope = 0;
     let needJacobian = true;
     const armScale = upper[X.arm]! - lower[X.arm]!;
+
+    /** Newton on the balances alone, controls held, with the factors at hand; true when they are met. */
+    const polish = (): boolean => {
+      for (let k = 0; k < 12; k++) {
+        const worst = Math.max(Math.abs(c[0]!), Math.abs(c[1]!), Math.abs(c[2]!), Math.abs(c[3]!));
+        if (worst < RESIDUAL_TOLERANCE) return true;
+        for (let i = 0; i < 4; i++) col[i] = -c[i]!;
+        luSolve(4, lu, pivots, col);
+        for (let i = 0; i < 4; i++) x[BASIC[i]!]! += col[i]!;
+        if (!(x[X.speed]! > vMin)) return false;
+        model.residualInto(tws, twa, x, c);
+        if (nSide > 0) model.sideConditionsInto(g);
+        evaluations++;
+      }
+      return false;
+    };
 
     for (; iterations < MAX_ITERATIONS; iterations++) {
       if (needJacobian) {
@@ -225,7 +244,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
         if (b11 * b22 - b12 * b12 < 1e-8 * b11 * b22) b12 = 0;
       }
       const rho = 100 * speed;
-      const qpViolation = solvePlaneQp(qp, m, b11, b12, b22, grad1, grad2, rho);
+      solvePlaneQp(qp, m, b11, b12, b22, grad1, grad2, rho);
       const dHeel = qp.p[0]!;
       const dDepower = qp.p[1]!;
       const dSpeed = ds0[0]! + th[0]! * dHeel + td[0]! * dDepower;
@@ -277,7 +296,19 @@ export function createOptimiser(model: ForceModel): Optimiser {
         model.residualInto(tws, twa, xNew, cNew);
         if (nSide > 0) model.sideConditionsInto(gNew);
         evaluations++;
-        const m1 = merit(xNew, cNew, violationAt(xNew, gNew));
+        let m1 = merit(xNew, cNew, violationAt(xNew, gNew));
+        // Where curvature of the balances spoils a good step, bring the state back onto them with the same factors.
+        for (let fix = 0; fix < 2 && m1 >= m0 && alpha > 0.05; fix++) {
+          for (let i = 0; i < 4; i++) col[i] = -cNew[i]!;
+          luSolve(4, lu, pivots, col);
+          if (!(Math.abs(col[0]!) < 0.3 * speed)) break;
+          for (let i = 0; i < 4; i++) xNew[BASIC[i]!]! += col[i]!;
+          if (xNew[X.speed]! < vMin) xNew[X.speed] = vMin;
+          model.residualInto(tws, twa, xNew, cNew);
+          if (nSide > 0) model.sideConditionsInto(gNew);
+          evaluations++;
+          m1 = merit(xNew, cNew, violationAt(xNew, gNew));
+        }
         const small = Math.abs(alpha * dSpeed) < 1e-6 * speed && Math.abs(gain) < 1e-7 * speed;
         if (
           m1 < m0 + 1e-12 * speed ||
@@ -306,10 +337,15 @@ export function createOptimiser(model: ForceModel): Optimiser {
         needJacobian = true;
       } else {
         needJacobian = false;
-        if (radius <= 1e-4 || qpViolation > 1e-3) {
-          // No progress is possible from here.
-          if (radius <= 1e-4) break;
+        if (radius <= 1e-4) {
+          // A corner of the model (a section reaching its limit) can leave a gradient that promises what no step
+          // keeps. If what it promises is nothing that shows, the state is brought exactly onto its balances and kept.
+          if (Math.abs(gain) < CORNER_GAIN * speed && violation < 1e-7) converged = polish();
+          break;
         }
+      }
+      if (iterations === MAX_ITERATIONS - 1 && Math.abs(gain) < CORNER_GAIN * speed && violation < 1e-7) {
+        converged = polish();
       }
     }
 

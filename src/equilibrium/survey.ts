@@ -23,7 +23,7 @@ export interface Survey {
   readonly evaluations: number;
 }
 
-const RUNGS = 18;
+const RUNGS = 14;
 const LOWEST = 0.03;
 const HIGHEST = 2.6;
 
@@ -54,14 +54,17 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
       evaluations++;
       const worst = Math.max(Math.abs(c[RES.sway]!), Math.abs(c[RES.roll]!), Math.abs(c[RES.yaw]!));
       if (worst < 1e-6 + 0.01 * Math.abs(c[RES.surge]!) && it > 0) return c[RES.surge]!;
-      evaluations += model.jacobianInto
-        ? model.jacobianInto(tws, twa, x, jac, jacSide)
-        : finiteDifferenceJacobian(model, tws, twa, x, c, g, jac, jacSide, work);
-      for (let i = 0; i < 3; i++) {
-        rhs[i] = -c[ROWS[i]!]!;
-        for (let j = 0; j < 3; j++) lu[i * 3 + j] = jac[ROWS[i]! * X.count + INNER[j]!]!;
+      // The matrix changes little from round to round: made at the first, renewed once if that was not enough.
+      if (it === 0 || it === 3) {
+        evaluations += model.jacobianInto
+          ? model.jacobianInto(tws, twa, x, jac, jacSide)
+          : finiteDifferenceJacobian(model, tws, twa, x, c, g, jac, jacSide, work);
+        for (let i = 0; i < 3; i++) {
+          for (let j = 0; j < 3; j++) lu[i * 3 + j] = jac[ROWS[i]! * X.count + INNER[j]!]!;
+        }
+        if (!luFactor(3, lu, pivots)) return Number.NaN;
       }
-      if (!luFactor(3, lu, pivots)) return Number.NaN;
+      for (let i = 0; i < 3; i++) rhs[i] = -c[ROWS[i]!]!;
       luSolve(3, lu, pivots, rhs);
       let scale = 1;
       if (Math.abs(rhs[0]!) > 0.2) scale = 0.2 / Math.abs(rhs[0]!);
@@ -79,17 +82,18 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
 
   return (tws, twa, thorough) => {
     evaluations = 0;
+    model.prepare?.(tws, twa);
     const points: SurveyPoint[] = [];
     let anyDrive = false;
     const heelTop = upper[X.heel]!;
     const heels = thorough
-      ? [0.02, 0.1, 0.2, 0.3, 0.42, 0.55].filter((h) => h <= heelTop).concat(heelTop)
+      ? [0.02, 0.15, 0.3].filter((h) => h < heelTop).concat(heelTop)
       : [0.03, 0.2, 0.38].filter((h) => h <= heelTop);
     if (heels.length === 0) heels.push(heelTop);
-    const depowers = (thorough ? [0, 0.2, 0.4, 0.6, 0.75, 0.87, 0.95, 0.99] : [0, 0.4, 0.75]).filter(
+    const depowers = (thorough ? [0, 0.3, 0.6, 0.8, 0.93, 0.99] : [0, 0.4, 0.75]).filter(
       (t) => t <= upper[X.depower]!,
     );
-    const rungs = thorough ? 2 * RUNGS : RUNGS;
+    const rungs = RUNGS;
     const x = new Float64Array(X.count);
     const previous = new Float64Array(X.count);
     const armScale = upper[X.arm]! - lower[X.arm]!;

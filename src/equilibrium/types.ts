@@ -32,6 +32,8 @@ export interface ForceModel {
   readonly bounds: Bounds;
   /** A speed typical of the boat [m/s], such as sqrt(g Lwl): sets the solver's scales. */
   readonly speedScale: number;
+  /** Called before a wind and angle are solved; a model may narrow its bounds by them. */
+  prepare?(tws: number, twa: number): void;
   /**
    * Residual of the balance at x for wind tws [m/s] and twa [rad, from the course]:
    * surge and sway divided by the displacement weight, roll and yaw by weight * length.

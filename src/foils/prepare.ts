@@ -117,7 +117,10 @@ export function prepareFoilSystem(spec: FoilSystemSpec): FoilSystem {
     out[FOIL.rudderHeelMoment] = rudderLift * rudderDepth;
     out[FOIL.heelMoment] = keelOwn * keelDepth + hullLift * hullDepth + rudderLift * rudderDepth;
     out[FOIL.rudderYawMoment] = rudderLift * cosHeel * rudderX;
-    out[FOIL.yawMoment] = keelLift * cosHeel * keelX + rudderLift * cosHeel * rudderX;
+    // A slender body at an angle turns further across the flow, rho V^2 (sideways volume) alpha (Munk 1924): the bow of
+    // a boat that makes leeway is pushed to windward.
+    const turning = 2 * q * spec.sidewaysVolume * alpha;
+    out[FOIL.yawMoment] = keelLift * cosHeel * keelX + rudderLift * cosHeel * rudderX + turning;
     const chord = area / span;
     const ki = q > 0 ? (keelLift * keelLift) / (2 * Math.PI * q * span * span * efficiency * loss) : 0;
     const ri = (qr * rud.area * rudderCl * rudderCl) / (Math.PI * rud.aspect * rud.efficiency * loss);

@@ -26,6 +26,11 @@ export interface FoilSystemSpec {
   readonly keel: FoilSpec;
   readonly rudder: FoilSpec;
   readonly canoeDraft: number;
+  /**
+   * Apparent volume [m3] of the hull moving sideways: the integral of pi/2 T(x)^2 along it. Sets the turning moment of
+   * a hull that makes leeway; 0 leaves it out.
+   */
+  readonly sidewaysVolume: number;
   readonly water: Fluid;
   /** Share of the board lowered, 0 to 1, that the solver may choose between; [1, 1] for a fixed keel. */
   readonly hoistRange: readonly [number, number];

@@ -54,6 +54,7 @@ function formOf(
   let bwl = 0;
   let first = x[0]!;
   let last = x[n - 1]!;
+  let sidewaysVolume = 0;
   const keel = new Float64Array(n);
   for (let i = 0; i < n; i++) {
     const water = f.height + x[i]! * slope;
@@ -63,6 +64,7 @@ function formOf(
     keel[i] = lowest - water;
     if (keel[i]! < 0) {
       draft = Math.max(draft, -keel[i]!);
+      sidewaysVolume += p.weight[i]! * 0.5 * Math.PI * keel[i]! * keel[i]!;
       // Breadth at the water: linear between the points that straddle it.
       for (let k = 0; k + 1 < s.z.length; k++) {
         const a = s.z[k]! - water;
@@ -98,6 +100,7 @@ function formOf(
     bm: im.transverse / im.volume,
     gm: im.z + im.transverse / im.volume - z,
     trim: f.trim,
+    sidewaysVolume,
   };
 }
 
@@ -217,6 +220,9 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
   const planing = new Float64Array(FN_COUNT);
   const heeling = new Float64Array(FN_COUNT);
   const keeling = new Float64Array(FN_COUNT);
+  // Share of friction that feels the heeled wetted area (none when planing), and Froude number squared, held at 0.6.
+  const afloat = new Float64Array(FN_COUNT).fill(1);
+  const square = Float64Array.from({ length: FN_COUNT }, (_, i) => Math.min(i * FN_STEP, 0.6) ** 2);
   const volumeScale = Math.sqrt(gravity * Math.cbrt(form.volume));
   const deadrise = Math.atan((4 * (1 - form.cm) * form.canoeDraft) / form.bwl) / DEG;
   const transom = p.x[0]!;
@@ -260,6 +266,7 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
       running = Math.max(running, total);
       planing[i] = running - displacement;
       heeling[i] = heel20.value(fn) * (1 - w);
+      afloat[i] = 1 - w;
     }
     keeling[i] = keelUpright ? (keelUpright.value(fn) * keelWeight) / weight : 0;
   }
@@ -272,6 +279,8 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
     total: pchipSlopes(grid, totalUpright),
     heeling: pchipSlopes(grid, heeling),
     keeling: pchipSlopes(grid, keeling),
+    afloat: pchipSlopes(grid, afloat),
+    square: pchipSlopes(grid, square),
   };
   const last = FN_COUNT - 1;
   const inverseStep = 1 / FN_STEP;
@@ -291,18 +300,19 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
       i = 0;
       t = 0;
     }
-    const at = (y: Float64Array, d: Float64Array): number =>
-      weight * extra * hermite(t, FN_STEP, y[i]!, y[i + 1]!, d[i]!, d[i + 1]!);
+    const plain = (y: Float64Array, d: Float64Array): number =>
+      hermite(t, FN_STEP, y[i]!, y[i + 1]!, d[i]!, d[i + 1]!);
+    const at = (y: Float64Array, d: Float64Array): number => weight * extra * plain(y, d);
     const f = at(friction, slopes.friction);
     const r = at(residuary, slopes.residuary);
     const u = at(totalUpright, slopes.total);
     const smoothHeel = Math.sqrt(heel * heel + rounding * rounding) - rounding;
-    out[HULL.friction] = f * wettedBy.value(heel) * inverseWetted;
+    out[HULL.friction] = f * (1 + plain(afloat, slopes.afloat) * (wettedBy.value(heel) * inverseWetted - 1));
     out[HULL.residuary] = r;
     out[HULL.planing] = u - f - r;
     out[HULL.heel] = at(heeling, slopes.heeling) * heelFactor(heel);
     out[HULL.keelResiduary] = at(keeling, slopes.keeling);
-    out[HULL.keelHeel] = keelWeight * keelHeel * Math.min(fn, 0.6) ** 2 * smoothHeel;
+    out[HULL.keelHeel] = keelWeight * keelHeel * plain(square, slopes.square) * smoothHeel;
     return (
       out[HULL.friction]! +
       out[HULL.residuary]! +

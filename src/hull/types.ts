@@ -80,6 +80,8 @@ export interface HullForm {
   readonly bm: number;
   readonly gm: number;
   readonly trim: number;
+  /** Integral of pi/2 T(x)^2 along the hull [m3]: the water that moves with it when it goes sideways. */
+  readonly sidewaysVolume: number;
 }
 
 /** A value outside the range of a published regression. */
