@@ -1,5 +1,5 @@
 import { FOIL } from '../foils/index.js';
-import { sailArea } from '../sails/index.js';
+import { AERO, type SailSet, sailArea } from '../sails/index.js';
 import { DEGREE } from '../units/index.js';
 import type { Boat } from './types.js';
 
@@ -76,8 +76,8 @@ export function describeBoat(boat: Boat): DescriptionRow[] {
     row(`set ${set.name}: area`, set.area, 'm2');
     row(`set ${set.name}: centre above the waterline`, set.centre[1], 'm');
     row(
-      `set ${set.name}: lead over the lateral centre`,
-      (100 * leadOf(boat, set.centre[0])) / d.lwl,
+      `set ${set.name}: lead of its force over the lateral centre`,
+      (100 * leadOf(boat, set)) / d.lwl,
       '% of Lwl',
     );
     row(`set ${set.name}: area over volume^(2/3)`, set.area / Math.cbrt(form.volume) ** 2);
@@ -97,18 +97,35 @@ export function describeBoat(boat: Boat): DescriptionRow[] {
   return rows;
 }
 
+/** The close-hauled flow at which centres are compared: speeds over sqrt(g Lwl), angles in deg (judgement). */
+const UPWIND = { speed: 0.33, tws: 0.66, twa: 43, leeway: 4 } as const;
+
 /**
- * x [m] of the side force in the water at small leeway with the rudder amidships: keel with the hull's share, and
- * rudder, from the foil system's own yaw moment.
+ * x [m] of the side force in the water close-hauled and upright, with the rudder amidships: keel with the hull's
+ * share, rudder, and the hull's own turning moment, from the foil system.
  */
 export function lateralCentre(boat: Boat): number {
   const out = new Float64Array(FOIL.count);
-  const speed = 0.35 * Math.sqrt(boat.spec.gravity * boat.hull.form.lwl);
-  boat.foils.evaluateInto(speed, 4 * DEGREE, 0, 0, boat.spec.boardRange[1], out);
+  const speed = UPWIND.speed * Math.sqrt(boat.spec.gravity * boat.hull.form.lwl);
+  boat.foils.evaluateInto(speed, UPWIND.leeway * DEGREE, 0, 0, boat.spec.boardRange[1], out);
   return out[FOIL.yawMoment]! / out[FOIL.lift]!;
 }
 
-/** Distance [m] by which the geometric centre of a sail set lies before the lateral centre. */
-export function leadOf(boat: Boat, sailX: number): number {
-  return sailX - lateralCentre(boat);
+/** x [m] of the side force of a sail set close-hauled, upright and at full power, without windage. */
+export function effortCentre(boat: Boat, set: SailSet): number {
+  const out = new Float64Array(AERO.count);
+  const scale = Math.sqrt(boat.spec.gravity * boat.hull.form.lwl);
+  const flow = {
+    speed: UPWIND.speed * scale,
+    tws: UPWIND.tws * scale,
+    twa: UPWIND.twa * DEGREE,
+    leeway: UPWIND.leeway * DEGREE,
+  };
+  set.evaluateInto(flow, 0, 0, out);
+  return (out[AERO.sideX]! - out[AERO.windageSideX]!) / (out[AERO.side]! - out[AERO.windageSide]!);
+}
+
+/** Distance [m] by which the force of a sail set lies before the lateral centre; heel turns the bow the other way. */
+export function leadOf(boat: Boat, set: SailSet): number {
+  return effortCentre(boat, set) - lateralCentre(boat);
 }

@@ -1,5 +1,5 @@
 export { assembleBoat, massOf, windageOf, windProfileOf } from './assemble.js';
-export { type DescriptionRow, describeBoat, lateralCentre, leadOf } from './describe.js';
+export { type DescriptionRow, describeBoat, effortCentre, lateralCentre, leadOf } from './describe.js';
 export { BoatFileError, type BoatFileProblem } from './problems.js';
 export { readBoatSpec } from './read.js';
 export { readBoatFile } from './read-file.js';
