@@ -1,0 +1,396 @@
+import { createHash } from 'node:crypto';
+import { readFileSync } from 'node:fs';
+import { createRequire } from 'node:module';
+import type { SailingResult } from '../equilibrium/index.js';
+import { CAUTIONS, ERROR_BANDS, ERROR_BANDS_SOURCE, METHODS } from './cautions.js';
+import { type Decimals, decimalsFor, fixed, rounded, significant } from './numbers.js';
+import { PAGE_SCRIPT } from './page-script.js';
+import { PAGE_STYLE } from './page-style.js';
+import { fileStem, oneLine } from './plain-text.js';
+import { figures, type PolarReport, type StateFigures } from './report.js';
+
+/** Text as HTML, for elements and quoted attributes. */
+export function escapeHtml(text: string): string {
+  return text
+    .replaceAll('&', '&amp;')
+    .replaceAll('<', '&lt;')
+    .replaceAll('>', '&gt;')
+    .replaceAll('"', '&quot;')
+    .replaceAll("'", '&#39;');
+}
+
+/** A value as JSON that may stand in a script element. */
+export function scriptJson(value: unknown): string {
+  return JSON.stringify(value)
+    .replaceAll('<', '\\u003c')
+    .replaceAll('>', '\\u003e')
+    .replaceAll('&', '\\u0026')
+    .replaceAll('\u2028', '\\u2028')
+    .replaceAll('\u2029', '\\u2029');
+}
+
+/** A script's text that cannot end its element early, nor open a comment in it. */
+export function inlineScript(script: string): string {
+  return script.replace(/<\/(script)/gi, '<\\/$1').replace(/<!--/g, '<\\!--');
+}
+
+/**
+ * Line colours in order of wind speed, cool to warm. Found by search: at least 3.2 : 1 against the sheet, and as far
+ * apart as nine colours get (OKLab distance 0.11 or more) for full colour vision and, by the matrices of Machado,
+ * Oliveira and Fernandes 2009, for protanopia, deuteranopia and tritanopia.
+ */
+const COLOURS = {
+  light: ['#738be5', '#20045c', '#6850b9', '#5d3862', '#d4538d', '#380812', '#835c33', '#a68b11', '#214601'],
+  dark: ['#75a3e0', '#b4d2fd', '#7554d4', '#945a84', '#d3a7a1', '#c24305', '#ed7c38', '#f3d228', '#d5f9d2'],
+} as const;
+
+/** Dashes tell lines apart without colour; four of them against nine colours repeat after 36 lines. */
+const DASHES = ['solid', 'dash', 'dot', 'dashdot'] as const;
+
+/** Places of the facts shown when a point is pointed at; see `hoverFacts`. */
+const HOVER =
+  '<b>%{customdata[0]} kn wind</b><br>TWA %{customdata[1]}°<br>speed %{customdata[2]} kn<br>VMG %{customdata[3]} kn' +
+  '<br>AWA %{customdata[4]}°<br>heel %{customdata[5]}°<br>leeway %{customdata[6]}°<br>ease %{customdata[7]}' +
+  '<br>crew %{customdata[8]}<br>%{customdata[9]}<br>sails: %{customdata[10]}<extra></extra>';
+
+function hoverFacts(f: StateFigures, d: Decimals): string[] {
+  return [
+    fixed(f.twsKn, 1),
+    fixed(f.twaDeg, d.angle),
+    fixed(f.speedKn, d.speed),
+    fixed(Math.abs(f.vmgKn), d.speed),
+    fixed(f.awaDeg, d.angle),
+    fixed(f.heelDeg, d.angle),
+    fixed(f.leewayDeg, d.angle),
+    fixed(f.ease, d.share),
+    fixed(f.crewShare, d.share),
+    escapeHtml(f.regime),
+    escapeHtml(oneLine(f.sailSet)),
+  ];
+}
+
+interface Point {
+  readonly angle: number;
+  readonly speed: number | null;
+  readonly facts: readonly string[];
+}
+
+function pointOf(r: SailingResult, d: Decimals): Point {
+  const f = figures(r);
+  const angle = rounded(f.twaDeg, 7) ?? 0;
+  if (f.status === 'unbalanced') return { angle, speed: null, facts: [] };
+  return { angle, speed: rounded(f.speedKn, 6), facts: hoverFacts(f, d) };
+}
+
+function diagramData(report: PolarReport, d: Decimals): unknown {
+  const { polar, boat } = report;
+  let top = 0;
+  const curves = polar.results.map((row, i) => {
+    const best = [polar.bestUp[i]!, polar.bestDown[i]!]
+      .filter((r) => r.status === 'balanced')
+      .map((r) => pointOf(r, d));
+    const points = row.map((r) => pointOf(r, d));
+    for (const b of best) if (!points.some((p) => Math.abs(p.angle - b.angle) < 1e-6)) points.push(b);
+    points.sort((a, b) => a.angle - b.angle);
+    let fastest = -1;
+    points.forEach((p, k) => {
+      if (p.speed !== null && (fastest < 0 || p.speed > points[fastest]!.speed!)) fastest = k;
+    });
+    if (fastest >= 0) top = Math.max(top, points[fastest]!.speed!);
+    const name = fixed(figures(polar.bestUp[i]!).twsKn, 1).replace(/\.0$/, '');
+    return {
+      name: `${name} kn`,
+      angle: points.map((p) => p.angle),
+      speed: points.map((p) => p.speed),
+      facts: points.map((p) => p.facts),
+      label: points.map((_, k) => (k === fastest ? ` ${name}` : '')),
+      best: {
+        angle: best.map((p) => p.angle),
+        speed: best.map((p) => p.speed),
+        facts: best.map((p) => p.facts),
+      },
+    };
+  });
+  return {
+    curves,
+    colours: COLOURS,
+    dashes: DASHES,
+    hover: HOVER,
+    top: top > 0 ? 1.06 * top : 1,
+    file: fileStem(boat.name, 'polar'),
+  };
+}
+
+type Cell = string;
+const th = (text: string, unit = '', left = false): Cell =>
+  `<th scope="col"${left ? ' class="text"' : ''}>${escapeHtml(text)}${unit === '' ? '' : `<small>${escapeHtml(unit)}</small>`}</th>`;
+const td = (text: string, kind = ''): Cell =>
+  `<td${kind === '' ? '' : ` class="${kind}"`}>${escapeHtml(text)}</td>`;
+
+function scrolling(label: string, table: string): string {
+  return `<div class="scroll" tabindex="0" role="region" aria-label="${escapeHtml(label)}">${table}</div>`;
+}
+
+const TARGET_HEADS = [
+  th('TWS', 'kn'),
+  th('TWA', 'deg'),
+  th('speed', 'kn'),
+  th('VMG', 'kn'),
+  th('AWA', 'deg'),
+  th('heel', 'deg'),
+  th('leeway', 'deg'),
+  th('ease'),
+  th('crew'),
+  th('regime', '', true),
+  th('sails', '', true),
+];
+
+function targetHtml(caption: string, results: readonly SailingResult[], d: Decimals): string {
+  const rows = results.map((r) => {
+    const f = figures(r);
+    const head = `<th scope="row">${fixed(f.twsKn, 1)}</th>`;
+    if (f.status === 'unbalanced')
+      return `<tr>${head}<td class="none" colspan="10">${escapeHtml(`${f.why}: ${oneLine(f.reason)}`)}</td></tr>`;
+    return `<tr>${head}${[
+      td(fixed(f.twaDeg, d.angle)),
+      td(fixed(f.speedKn, d.speed)),
+      td(fixed(Math.abs(f.vmgKn), d.speed)),
+      td(fixed(f.awaDeg, d.angle)),
+      td(fixed(f.heelDeg, d.angle)),
+      td(fixed(f.leewayDeg, d.angle)),
+      td(fixed(f.ease, d.share)),
+      td(fixed(f.crewShare, d.share)),
+      td(f.regime, 'text'),
+      td(oneLine(f.sailSet), 'text'),
+    ].join('')}</tr>`;
+  });
+  return scrolling(
+    caption,
+    `<table class="targets"><caption>${escapeHtml(caption)}</caption><thead><tr>${TARGET_HEADS.join('')}</tr></thead><tbody>${rows.join('')}</tbody></table>`,
+  );
+}
+
+const FULL_HEADS = [
+  th('TWA', 'deg'),
+  th('speed', 'kn'),
+  th('VMG', 'kn'),
+  th('AWS', 'kn'),
+  th('AWA', 'deg'),
+  th('heel', 'deg'),
+  th('leeway', 'deg'),
+  th('rudder', 'deg'),
+  th('ease'),
+  th('crew'),
+  th('regime', '', true),
+  th('sails', '', true),
+];
+
+function fullTable(report: PolarReport, i: number, d: Decimals): string {
+  const { polar } = report;
+  const entries: { result: SailingResult; best: boolean }[] = polar.results[i]!.map((result) => ({
+    result,
+    best: false,
+  }));
+  for (const result of [polar.bestUp[i]!, polar.bestDown[i]!]) {
+    if (result.status === 'unbalanced') continue;
+    const at = entries.findIndex((e) => Math.abs(e.result.twa - result.twa) < 1e-9);
+    if (at >= 0) entries[at] = { result, best: true };
+    else entries.push({ result, best: true });
+  }
+  entries.sort((a, b) => a.result.twa - b.result.twa);
+  const rows = entries.map(({ result, best }) => {
+    const f = figures(result);
+    const head = `<th scope="row">${fixed(f.twaDeg, d.angle)}</th>`;
+    if (f.status === 'unbalanced')
+      return `<tr>${head}<td class="none" colspan="11">${escapeHtml(`${f.why}: ${oneLine(f.reason)}`)}</td></tr>`;
+    const regime = [f.regime, ...(best ? ['best VMG'] : []), ...f.notes.map(oneLine)].join('; ');
+    return `<tr${best ? ' class="best"' : ''}>${head}${[
+      td(fixed(f.speedKn, d.speed)),
+      td(fixed(f.vmgKn, d.speed)),
+      td(fixed(f.awsKn, d.speed)),
+      td(fixed(f.awaDeg, d.angle)),
+      td(fixed(f.heelDeg, d.angle)),
+      td(fixed(f.leewayDeg, d.angle)),
+      td(fixed(f.rudderDeg, d.angle)),
+      td(fixed(f.ease, d.share)),
+      td(fixed(f.crewShare, d.share)),
+      td(regime, 'text'),
+      td(oneLine(f.sailSet), 'text'),
+    ].join('')}</tr>`;
+  });
+  const tws = fixed(figures(polar.bestUp[i]!).twsKn, 1);
+  let fastest: StateFigures | undefined;
+  let without = 0;
+  for (const { result } of entries) {
+    const f = figures(result);
+    if (f.status === 'unbalanced') without++;
+    else if (fastest === undefined || f.speedKn > fastest.speedKn) fastest = f;
+  }
+  const summary =
+    (fastest === undefined
+      ? 'no balanced state'
+      : `fastest ${fixed(fastest.speedKn, d.speed)} kn at ${fixed(fastest.twaDeg, 0)}°`) +
+    (without > 0 ? `; ${without} ${without === 1 ? 'angle' : 'angles'} without a balanced state` : '');
+  return `<details${i === 0 ? ' open' : ''}><summary><b>${tws} kn</b> <span class="soft">${escapeHtml(summary)}</span></summary>${scrolling(
+    `All states in ${tws} kn of wind`,
+    `<table class="states"><thead><tr>${FULL_HEADS.join('')}</tr></thead><tbody>${rows.join('')}</tbody></table>`,
+  )}</details>`;
+}
+
+function boatHtml(report: PolarReport): string {
+  const { boat } = report;
+  const quantities = boat.description
+    .map((r, i, all) => {
+      const first = i === 0 || all[i - 1]!.section !== r.section;
+      const value = typeof r.value === 'number' ? significant(r.value) : oneLine(r.value);
+      return `<tr>${td(first ? r.section : '', 'text')}${td(oneLine(r.quantity), 'text')}${td(value)}${td(r.unit, 'text')}</tr>`;
+    })
+    .join('');
+  const estimates = boat.estimates
+    .map(
+      (e) =>
+        `<tr>${td(e.key, 'text')}${td(oneLine(e.value), 'text')}${td(oneLine(e.rule), 'text wide')}</tr>`,
+    )
+    .join('');
+  const warnings = boat.warnings
+    .map(
+      (w) =>
+        `<tr>${td(w.parameter, 'text')}${td(significant(w.value))}${td(`${significant(w.range[0])} to ${significant(w.range[1])}`)}${td(w.method, 'text wide')}${td(w.treatment, 'text wide')}</tr>`,
+    )
+    .join('');
+  const none = (text: string): string => `<p class="soft">${escapeHtml(text)}</p>`;
+  return [
+    scrolling(
+      'Quantities worked out from the boat file',
+      `<table id="quantities"><caption>Worked out from the boat file</caption><thead><tr>${th('part', '', true)}${th('quantity', '', true)}${th('value')}${th('unit', '', true)}</tr></thead><tbody>${quantities}</tbody></table>`,
+    ),
+    '<h3>Estimated, for want of a value in the file</h3>',
+    estimates === ''
+      ? none('Nothing: the file gives every value.')
+      : scrolling(
+          'Estimates',
+          `<table id="estimates"><thead><tr>${th('key', '', true)}${th('value', '', true)}${th('rule', '', true)}</tr></thead><tbody>${estimates}</tbody></table>`,
+        ),
+    '<h3>Outside the range of a published method</h3>',
+    warnings === ''
+      ? none('Nothing: all parameters lie within the ranges of the methods used.')
+      : scrolling(
+          'Warnings',
+          `<table id="warnings"><thead><tr>${th('parameter', '', true)}${th('value')}${th('range')}${th('method', '', true)}${th('what was done', '', true)}</tr></thead><tbody>${warnings}</tbody></table>`,
+        ),
+  ].join('\n');
+}
+
+let plotly: string | undefined;
+
+/** The plotting library's text, read once, fit to stand in a script element. */
+function plotlySource(): string {
+  plotly ??= inlineScript(
+    readFileSync(createRequire(import.meta.url).resolve('plotly.js-dist-min'), 'utf8').replace(
+      /^\/\/# sourceMappingURL=.*$/m,
+      '',
+    ),
+  );
+  return plotly;
+}
+
+const sha256 = (script: string): string => `'sha256-${createHash('sha256').update(script).digest('base64')}'`;
+
+/**
+ * A page that needs nothing beside itself: polar diagram, targets, every state, the boat's quantities, how far to
+ * trust it all, and where it comes from. Its content policy lets it run its own scripts and reach no network.
+ * @param decimals of speeds; angles carry one less
+ */
+export function polarPage(report: PolarReport, decimals = 2): string {
+  const d = decimalsFor(decimals);
+  const { polar, boat } = report;
+  const library = plotlySource();
+  const script = inlineScript(PAGE_SCRIPT);
+  const policy = [
+    "default-src 'none'",
+    `script-src ${sha256(library)} ${sha256(script)}`,
+    "style-src 'unsafe-inline'",
+    'img-src data: blob:',
+    "base-uri 'none'",
+    "form-action 'none'",
+  ].join('; ');
+  const name = escapeHtml(oneLine(boat.name));
+  const note = oneLine(boat.note);
+  const height = significant(polar.windHeight, 3);
+  return `<!doctype html>
+<html lang="en">
+<head>
+<meta charset="utf-8">
+<meta http-equiv="Content-Security-Policy" content="${escapeHtml(policy)}">
+<meta name="viewport" content="width=device-width, initial-scale=1">
+<meta name="referrer" content="no-referrer">
+<link rel="icon" href="data:,">
+<title>${name}: predicted speeds</title>
+<style>${PAGE_STYLE}</style>
+</head>
+<body>
+<div class="page">
+<header>
+<h1>${name}</h1>
+<p>Predicted speeds in true winds of ${escapeHtml(polar.tws.map((_, i) => fixed(figures(polar.bestUp[i]!).twsKn, 1).replace(/\.0$/, '')).join(', '))} kn at ${height} m above flat water.</p>
+${note === '' ? '' : `<p class="soft note">${escapeHtml(note)}</p>`}
+<nav aria-label="Parts of this page"><a href="#diagram">diagram</a><a href="#targets">best VMG</a><a href="#states">all states</a><a href="#boat">the boat</a><a href="#trust">how far to trust it</a><a href="#methods">methods</a><a href="#cautions">cautions</a></nav>
+</header>
+<main>
+<div class="pair">
+<section id="diagram" aria-labelledby="diagram-title">
+<h2 id="diagram-title">Polar diagram</h2>
+<p class="soft">Boat speed in knots outward, true wind angle from the course around; diamonds mark best VMG. Gaps are angles without a balanced state.</p>
+<div id="polar" role="img" aria-label="Polar diagram: boat speed over true wind angle, one line for each wind speed. The tables on this page hold the same figures."></div>
+<noscript><p>The diagram needs scripts; the tables hold the same figures.</p></noscript>
+</section>
+<section id="targets" aria-labelledby="targets-title">
+<h2 id="targets-title">Best VMG</h2>
+${targetHtml('To windward', polar.bestUp, d)}
+<h3></h3>
+${targetHtml('To leeward', polar.bestDown, d)}
+<h3>How to read it</h3>
+<dl>
+<dt>TWS, TWA</dt><dd>true wind speed, and angle from the course through the water</dd>
+<dt>AWS, AWA</dt><dd>apparent wind at ${height} m, speed, and angle from the heading</dd>
+<dt>VMG</dt><dd>speed made good straight to windward, or to leeward</dd>
+<dt>ease</dt><dd>share of the sails' full heeling moment given up: 0 is full power</dd>
+<dt>crew</dt><dd>the crew's arm as a share of fully out; below 0 to leeward</dd>
+<dt>regime</dt><dd>what holds the boat up, or limits her: the crew's place, easing, or the accepted heel</dd>
+</dl>
+</section>
+</div>
+<section id="states" aria-labelledby="states-title">
+<h2 id="states-title">All states, by wind speed</h2>
+${polar.tws.map((_, i) => fullTable(report, i, d)).join('\n')}
+</section>
+<section id="boat" aria-labelledby="boat-title">
+<h2 id="boat-title">The boat</h2>
+${boatHtml(report)}
+</section>
+<div class="pair">
+<section id="trust" aria-labelledby="trust-title">
+<h2 id="trust-title">How far to trust it</h2>
+<table><caption>Error to expect without calibration</caption><thead><tr>${th('where', '', true)}${th('share of boat speed')}</tr></thead><tbody>${ERROR_BANDS.map((b) => `<tr>${td(b.where, 'text')}${td(`± ${b.band}`)}</tr>`).join('')}</tbody></table>
+<p></p>
+<p class="soft">${escapeHtml(ERROR_BANDS_SOURCE)}</p>
+</section>
+<section id="cautions" class="cautions" aria-labelledby="cautions-title">
+<h2 id="cautions-title">Cautions</h2>
+<ul>${CAUTIONS.map((c) => `<li>${escapeHtml(c)}</li>`).join('')}</ul>
+</section>
+</div>
+<section id="methods" aria-labelledby="methods-title">
+<h2 id="methods-title">Methods and sources</h2>
+${scrolling('Methods and sources', `<table><thead><tr>${th('part', '', true)}${th('method', '', true)}${th('source', '', true)}</tr></thead><tbody>${METHODS.map((m) => `<tr>${td(m.part, 'text')}${td(m.method, 'text wide')}${td(m.source, 'text wide')}</tr>`).join('')}</tbody></table>`)}
+</section>
+</main>
+<footer>Written by polarwright. The page needs no network.</footer>
+</div>
+<script type="application/json" id="polar-data">${scriptJson(diagramData(report, d))}</script>
+<script>${library}</script>
+<script>${script}</script>
+</body>
+</html>
+`;
+}

@@ -1,0 +1,96 @@
+import { type Boat, type DescriptionRow, describeBoat, type Estimate } from '../boat/index.js';
+import type { SailingResult } from '../equilibrium/index.js';
+import type { Polar } from '../polar/index.js';
+import { degrees, toKnots } from '../units/index.js';
+
+/** What is to be known of the boat in a report. Plain data. */
+export interface BoatFacts {
+  readonly name: string;
+  readonly note: string;
+  readonly description: readonly DescriptionRow[];
+  readonly estimates: readonly Estimate[];
+  readonly warnings: Boat['warnings'];
+}
+
+/** Everything a polar's files are written from. Plain data. */
+export interface PolarReport {
+  readonly boat: BoatFacts;
+  readonly polar: Polar;
+}
+
+/** The boat's own part of a report. */
+export function boatFacts(boat: Boat): BoatFacts {
+  return {
+    name: boat.spec.name,
+    note: boat.spec.note,
+    description: describeBoat(boat),
+    estimates: boat.estimates,
+    warnings: boat.warnings,
+  };
+}
+
+/** A boat and its polar, ready to be published. */
+export function polarReport(boat: Boat, polar: Polar): PolarReport {
+  return { boat: boatFacts(boat), polar };
+}
+
+/** A balanced state in knots and degrees. */
+export interface StateFigures {
+  readonly status: 'balanced';
+  readonly twsKn: number;
+  readonly twaDeg: number;
+  readonly twaHeadingDeg: number;
+  readonly speedKn: number;
+  readonly vmgKn: number;
+  readonly awsKn: number;
+  readonly awaDeg: number;
+  readonly heelDeg: number;
+  readonly leewayDeg: number;
+  readonly rudderDeg: number;
+  readonly ease: number;
+  readonly crewShare: number;
+  readonly crewArmM: number;
+  readonly sailSet: string;
+  readonly regime: string;
+  readonly notes: readonly string[];
+}
+
+/** A state that does not balance, in knots and degrees. */
+export interface NoStateFigures {
+  readonly status: 'unbalanced';
+  readonly twsKn: number;
+  readonly twaDeg: number;
+  readonly why: string;
+  readonly reason: string;
+}
+
+/** A result in the units of tables: kn, deg, m; shares from 0 to 1. */
+export function figures(r: SailingResult): StateFigures | NoStateFigures {
+  if (r.status === 'unbalanced')
+    return {
+      status: r.status,
+      twsKn: toKnots(r.tws),
+      twaDeg: degrees(r.twa),
+      why: r.why,
+      reason: r.reason,
+    };
+  return {
+    status: r.status,
+    twsKn: toKnots(r.tws),
+    twaDeg: degrees(r.twa),
+    twaHeadingDeg: degrees(r.twaHeading),
+    speedKn: toKnots(r.speed),
+    vmgKn: toKnots(r.vmg),
+    awsKn: toKnots(r.aws),
+    awaDeg: degrees(r.awa),
+    heelDeg: degrees(r.heel),
+    leewayDeg: degrees(r.leeway),
+    rudderDeg: degrees(r.rudder),
+    ease: r.ease,
+    crewShare: r.crewShare,
+    crewArmM: r.crewArm,
+    sailSet: r.sailSet,
+    regime: r.regime,
+    notes: r.notes,
+  };
+}
