@@ -1,0 +1,58 @@
+import { join } from 'node:path';
+import { predictPolar } from '../polar/index.js';
+import {
+  cautionText,
+  fileStem,
+  polarCsv,
+  polarJson,
+  polarPage,
+  polarReport,
+  targetTable,
+  writeFiles,
+} from '../publish/index.js';
+import { fromKnots, radians } from '../units/index.js';
+import { loadBoat, reportName } from './boat-input.js';
+import { UsageError } from './errors.js';
+import { readList, WIND_ANGLES, WIND_SPEEDS } from './grid.js';
+import { print, printRaw } from './output.js';
+
+export interface PolarArguments {
+  readonly boat: string;
+  readonly tws: string | undefined;
+  readonly twa: string | undefined;
+  readonly out: string;
+  readonly json: boolean;
+  readonly quiet: boolean;
+  readonly decimals: string | undefined;
+}
+
+function readDecimals(text: string | undefined): number | undefined {
+  if (text === undefined) return undefined;
+  if (!/^[0-6]$/.test(text.trim()))
+    throw new UsageError(`--decimals: "${text}" is not a whole number from 0 to 6`);
+  return Number(text);
+}
+
+/** Predicts the polar, writes its files, prints the targets. */
+export function polarCommand(a: PolarArguments): void {
+  const tws = a.tws === undefined ? undefined : readList(a.tws, WIND_SPEEDS).map(fromKnots);
+  const twa = a.twa === undefined ? undefined : readList(a.twa, WIND_ANGLES).map(radians);
+  const decimals = readDecimals(a.decimals);
+  const boat = loadBoat(a.boat);
+  const polar = predictPolar(boat, { ...(tws && { tws }), ...(twa && { twa }) });
+  const report = polarReport(boat, polar);
+  if (a.json) {
+    printRaw(polarJson(report));
+    return;
+  }
+  const stem = fileStem(reportName(a.boat, boat));
+  const files = writeFiles(a.out, [
+    { name: `${stem}-polar.csv`, content: polarCsv(report, decimals) },
+    { name: `${stem}-results.json`, content: polarJson(report) },
+    { name: `${stem}-page.html`, content: polarPage(report, decimals) },
+  ]);
+  if (a.quiet) return;
+  const what = ['polar table', 'results', 'page'];
+  const places = files.map((f, i) => `${what[i]!.padEnd(11)}  ${join(f)}`);
+  print([targetTable(report, decimals), '', cautionText(), '', ...places].join('\n'));
+}
