@@ -15,6 +15,8 @@ const CAST_IRON = 7200;
 const REACH = { hiking: 0.35, trapeze: 1.0, rail: -0.07 } as const;
 /** Drag area [m2] of one of the crew; judgement. */
 const CREW_DRAG = { hiking: 0.4, trapeze: 0.55, rail: 0.3 } as const;
+/** Share of that area which each further body of a row on the rail adds, in the lee of its neighbour; judgement. */
+const RAIL_SHELTER = 0.4;
 
 type Complain = ParsedFile['complain'];
 
@@ -631,7 +633,10 @@ function readCrew(
     dragArea: est.pick(
       ['crew', 'drag_area'],
       c.drag_area,
-      () => wires * CREW_DRAG.trapeze + (count - wires) * CREW_DRAG[others],
+      () =>
+        wires * CREW_DRAG.trapeze +
+        CREW_DRAG[others] *
+          (others === 'rail' && count > wires ? 1 + RAIL_SHELTER * (count - wires - 1) : count - wires),
     ),
   };
   return { spec, aft, foremost, aftmost };

@@ -401,7 +401,7 @@ export const boatFile = {
           kind: 'area',
           range: [0, 20],
           missing: {
-            rule: 'each hiking 0.40 m2, on a trapeze 0.55 m2, on the rail 0.30 m2 as they shelter each other (judgement)',
+            rule: 'each hiking 0.40 m2, on a trapeze 0.55 m2; on the rail the first 0.30 m2 and 0.12 m2 for each further one, sheltered (judgement)',
           },
           describe: 'Drag coefficient times area of the whole crew in the wind.',
         },

@@ -1,7 +1,7 @@
-import type { Fluid, WindProfile } from '../environment/types.js';
-import type { FoilSpec, FoilSystem } from '../foils/types.js';
-import type { Hull, Lines, MainDimensions, RangeWarning, ResiduaryMethod } from '../hull/types.js';
-import type { SailSet, SailShape } from '../sails/types.js';
+import type { Fluid, WindProfile } from '../environment/index.js';
+import type { FoilSpec, FoilSystem } from '../foils/index.js';
+import type { Hull, Lines, MainDimensions, RangeWarning, ResiduaryMethod } from '../hull/index.js';
+import type { SailSet, SailShape } from '../sails/index.js';
 
 /** One part of the boat's weight, without the crew. */
 export interface WeightItem {

@@ -93,7 +93,7 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
     const depowers = (thorough ? [0, 0.3, 0.6, 0.8, 0.93, 0.99] : [0, 0.4, 0.75]).filter(
       (t) => t <= upper[X.depower]!,
     );
-    const rungs = RUNGS;
+    const rungs = thorough ? 9 : RUNGS;
     const x = new Float64Array(X.count);
     const previous = new Float64Array(X.count);
     const armScale = upper[X.arm]! - lower[X.arm]!;

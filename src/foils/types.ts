@@ -1,4 +1,4 @@
-import type { Fluid } from '../environment/types.js';
+import type { Fluid } from '../environment/index.js';
 
 export type FoilKind = 'keel' | 'centreboard' | 'rudder';
 

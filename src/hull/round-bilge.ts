@@ -23,10 +23,14 @@ export function generateRoundBilge(d: MainDimensions): Lines {
   const ratio = Math.sqrt(aft / forward);
   const waterline = waterlineExponent(d.cwp, lf, la, ratio);
   const stations: Station[] = [];
-  const count = 41;
+  const half = 20;
   const points = 28;
-  for (let i = 0; i < count; i++) {
-    const x = -0.5 * Math.cos((Math.PI * i) / (count - 1));
+  for (let i = 0; i <= 2 * half; i++) {
+    // Dense at the ends, with a station at the fullest section.
+    const x =
+      i <= half
+        ? -0.5 + la * (1 - Math.cos((0.5 * Math.PI * i) / half))
+        : 0.5 - lf * (1 - Math.cos((0.5 * Math.PI * (2 * half - i)) / half));
     const onBow = x >= fullest;
     const u = Math.min(1, onBow ? (x - fullest) / lf : (fullest - x) / la);
     const base = Math.max(0, 1 - u * u);

@@ -1,4 +1,4 @@
-import type { Fluid } from '../environment/types.js';
+import type { Fluid } from '../environment/index.js';
 
 /**
  * Body axes of every room: origin amidships of the design waterline, on the centreline, at the design

@@ -1,4 +1,4 @@
-import type { SailingResult } from '../equilibrium/types.js';
+import type { SailingResult } from '../equilibrium/index.js';
 
 /** A polar: for every wind speed the whole angle grid and the two best-VMG states. SI and rad. */
 export interface Polar {

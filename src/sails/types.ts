@@ -1,4 +1,4 @@
-import type { SailingFlow, WindProfile } from '../environment/types.js';
+import type { SailingFlow, WindProfile } from '../environment/index.js';
 
 export type SailKind = 'mainsail' | 'jib';
 
