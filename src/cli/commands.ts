@@ -23,6 +23,9 @@ interface CommandNote {
   readonly run: (argv: Readonly<Record<string, unknown>>) => Promise<void>;
 }
 
+/** How "-" (standard input or output) passes through the parser, which takes it for an option. */
+const STANDARD = '\u0001standard';
+
 const JSON_OPTION: OptionNote = {
   type: 'boolean',
   describe: 'print everything as JSON, and nothing else',
@@ -31,6 +34,7 @@ const JSON_OPTION: OptionNote = {
 const BOAT = { name: 'boat', describe: 'boat file (YAML); "-" reads standard input' };
 
 const text = (v: unknown): string | undefined => (v === undefined ? undefined : String(v));
+const file = (v: unknown): string => (v === STANDARD ? '-' : String(v));
 
 /** Every command: what it is called, what it takes, what it runs. Heavy parts are loaded when a command runs. */
 const COMMANDS: Readonly<Record<string, CommandNote>> = {
@@ -54,7 +58,7 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
     run: async (argv) => {
       const { polarCommand } = await import('./polar-command.js');
       polarCommand({
-        boat: String(argv.boat),
+        boat: file(argv.boat),
         tws: text(argv.tws),
         twa: text(argv.twa),
         out: String(argv.out),
@@ -80,7 +84,7 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
     run: async (argv) => {
       const { explainCommand } = await import('./explain-command.js');
       explainCommand({
-        boat: String(argv.boat),
+        boat: file(argv.boat),
         tws: String(argv.tws),
         twa: String(argv.twa),
         json: argv.json === true,
@@ -95,7 +99,7 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
     options: { json: JSON_OPTION },
     run: async (argv) => {
       const { checkCommand } = await import('./check-command.js');
-      checkCommand({ boat: String(argv.boat), json: argv.json === true });
+      checkCommand({ boat: file(argv.boat), json: argv.json === true });
     },
   },
   new: {
@@ -123,7 +127,7 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
     run: async (argv) => {
       const { newCommand } = await import('./new-command.js');
       newCommand({
-        file: String(argv.file),
+        file: file(argv.file),
         kind: argv.kind === 'keelboat' ? 'keelboat' : 'dinghy',
         force: argv.force === true,
       });
@@ -135,7 +139,11 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
 const COMMON = ['help', 'version'] as const;
 const SHORT: Readonly<Record<string, string>> = { h: 'help' };
 
-const examples = (lines: readonly string[]): string => `Examples:\n${lines.map((l) => `  ${l}`).join('\n')}`;
+/** The help's layout takes blanks off the start of a line; these are put back as blanks. */
+const INDENT = '\u0002\u0002';
+
+const examples = (lines: readonly string[]): string =>
+  `Examples:\n${lines.map((l) => `${INDENT}${l}`).join('\n')}`;
 
 /** Suggests the nearest known name. Loaded only when something is wrong. */
 async function suggestion(word: string, known: readonly string[]): Promise<string> {
@@ -144,46 +152,100 @@ async function suggestion(word: string, known: readonly string[]): Promise<strin
   return near === undefined ? '' : near;
 }
 
-/** Looks the words over before they are parsed: commands and options that do not exist, options given twice. */
-async function lookOver(argv: readonly string[]): Promise<void> {
+/** The words of a command line, looked over: every one is known to be understood. */
+interface Words {
+  readonly command: string | undefined;
+  readonly words: readonly string[];
+}
+
+/**
+ * Looks the words over before they are parsed, so that a slip gets an answer that helps: commands and options that do
+ * not exist, options given twice or without a value, files missing or too many. Words after "--" are files.
+ */
+async function lookOver(argv: readonly string[]): Promise<Words> {
   const end = argv.indexOf('--');
-  const words = end < 0 ? argv : argv.slice(0, end);
-  const name = words.find((w, i) => !w.startsWith('-') && !isValue(words, i));
-  const wantsNothing = words.some((w) => w === '--help' || w === '-h' || w === '--version');
+  const front = end < 0 ? argv : argv.slice(0, end);
+  const rear = end < 0 ? [] : argv.slice(end + 1);
+  const isOption = (word: string): boolean => /^-[^\d.]/.test(word);
+  const wantsText = front.some((w) => w === '--help' || w === '-h' || w === '--version');
+
+  const places: number[] = [];
+  for (let i = 0; i < front.length; i++) {
+    if (!isOption(front[i]!)) places.push(i);
+    else if (takesValue(front[i]!)) i++;
+  }
+  const name = places.length > 0 ? front[places[0]!]! : rear[0];
+  const help = 'polarwright --help';
   if (name === undefined) {
-    if (!wantsNothing)
-      throw new UsageError('name a command: polar, explain, check or new', 'polarwright --help');
+    if (!wantsText) throw new UsageError(`name a command: ${Object.keys(COMMANDS).join(', ')}`, help);
   } else if (!Object.hasOwn(COMMANDS, name)) {
     const near = await suggestion(name, Object.keys(COMMANDS));
     const hint = near === '' ? `there are ${Object.keys(COMMANDS).join(', ')}` : `did you mean ${near}?`;
-    throw new UsageError(`there is no command "${name}"; ${hint}`, 'polarwright --help');
+    throw new UsageError(`there is no command "${name}"; ${hint}`, help);
   }
   const command = name === undefined ? undefined : COMMANDS[name];
-  const options = command?.options ?? {};
+  const ownHelp = name === undefined ? help : `polarwright ${name} --help`;
+  await lookOverOptions(front, command?.options ?? {}, isOption, ownHelp);
+  const files = [...places.map((i) => front[i]!), ...rear].slice(1);
+  if (command !== undefined && !wantsText) {
+    const { positional } = command;
+    if (files.length > 1)
+      throw new UsageError(`${name} takes one ${positional.name} only, not also "${files[1]}"`, ownHelp);
+    if (files.length === 0 && positional.default === undefined)
+      throw new UsageError(`${name}: name a boat file, or "-" for standard input`, ownHelp);
+    for (const [option, note] of Object.entries(command.options)) {
+      if (note.demandOption && !front.some((w) => w === `--${option}` || w.startsWith(`--${option}=`)))
+        throw new UsageError(`${name}: --${option} is missing (${note.describe})`, ownHelp);
+    }
+  }
+  const plain = (w: string): string => (w === '-' ? STANDARD : w);
+  return {
+    command: name,
+    words: [
+      ...front.map(plain),
+      ...rear.map((w) => (w.length > 1 && w.startsWith('-') ? `./${w}` : plain(w))),
+    ],
+  };
+}
+
+async function lookOverOptions(
+  words: readonly string[],
+  options: Readonly<Record<string, OptionNote>>,
+  isOption: (word: string) => boolean,
+  help: string,
+): Promise<void> {
   const known = [...Object.keys(options), ...COMMON];
-  const help = name === undefined ? 'polarwright --help' : `polarwright ${name} --help`;
   const seen = new Set<string>();
-  for (const word of words) {
-    if (!/^-[^\d.]/.test(word)) continue;
+  for (let i = 0; i < words.length; i++) {
+    const word = words[i]!;
+    if (!isOption(word)) continue;
     const long = word.startsWith('--');
-    const given = word.replace(/^--?/, '').split('=', 1)[0]!;
-    const option = long ? given : (SHORT[given] ?? given);
-    if ((!long && SHORT[given] === undefined) || !known.includes(option)) {
-      const near = await suggestion(given, known);
+    const [given, ...values] = word.replace(/^--?/, '').split('=') as [string, ...string[]];
+    const option = long ? given : SHORT[given];
+    if (option === undefined || !known.includes(option)) {
+      const near = given.length > 1 ? await suggestion(given, known) : '';
       const hint = near === '' ? '' : `; did you mean --${near}?`;
       throw new UsageError(`there is no option "${word.split('=', 1)[0]}"${hint}`, help);
     }
     if (seen.has(option)) throw new UsageError(`option --${option} is given twice`, help);
     seen.add(option);
+    const note = options[option];
+    if (note?.type !== 'string') {
+      if (values.length > 0) throw new UsageError(`--${option} takes no value`, help);
+      continue;
+    }
+    const value = values.length > 0 ? values.join('=') : words[++i];
+    if (value === undefined || value.trim() === '' || (values.length === 0 && isOption(value)))
+      throw new UsageError(`--${option} wants a value (${note.describe})`, help);
+    if (note.choices && !note.choices.includes(value))
+      throw new UsageError(`--${option}: "${value}" is none of ${note.choices.join(', ')}`, help);
   }
 }
 
-/** True where a word is the value of the option before it, such as 12 in `--tws 12`. */
-function isValue(words: readonly string[], i: number): boolean {
-  const before = words[i - 1];
-  if (before === undefined || !before.startsWith('--') || before.includes('=')) return false;
-  const option = before.slice(2);
-  return Object.values(COMMANDS).some((c) => c.options[option]?.type === 'string');
+/** True where the word after an option is its value, such as 12 in `--tws 12`. */
+function takesValue(word: string): boolean {
+  if (!word.startsWith('--') || word.includes('=')) return false;
+  return Object.values(COMMANDS).some((c) => c.options[word.slice(2)]?.type === 'string');
 }
 
 /**
@@ -191,7 +253,7 @@ function isValue(words: readonly string[], i: number): boolean {
  * @throws UsageError on anything that is not understood
  */
 export async function choose(argv: readonly string[], version: string): Promise<Chosen> {
-  await lookOver(argv);
+  const { command: named, words } = await lookOver(argv);
   let chosen: (() => Promise<void>) | undefined;
   const width = Math.min(100, process.stdout.columns ?? 100);
   const parser = yargs()
@@ -252,12 +314,11 @@ export async function choose(argv: readonly string[], version: string): Promise<
   }
   let shown = '';
   try {
-    await parser.parseAsync([...argv], {}, (_error: unknown, _argv: unknown, output: string) => {
+    await parser.parseAsync([...words], {}, (_error: unknown, _argv: unknown, output: string) => {
       shown = output;
     });
   } catch (error) {
     if (error instanceof UsageError) throw error;
-    const named = argv.find((w) => Object.hasOwn(COMMANDS, w));
     const message = error instanceof Error ? error.message : String(error);
     throw new UsageError(
       message.replace(/\s*\n\s*/g, '; '),
@@ -265,5 +326,5 @@ export async function choose(argv: readonly string[], version: string): Promise<
     );
   }
   if (chosen !== undefined) return { kind: 'run', run: chosen };
-  return { kind: 'text', text: shown };
+  return { kind: 'text', text: shown.replaceAll('\u0002', ' ') };
 }

@@ -6,6 +6,7 @@ import {
   cautionText,
   figures,
   fixed,
+  TEXT_WIDTH,
   wrapped,
 } from '../publish/index.js';
 import { fromKnots, radians } from '../units/index.js';

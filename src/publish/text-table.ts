@@ -199,8 +199,15 @@ export function boatText(boat: BoatFacts): string {
   const rows: string[][] = [];
   let section = '';
   for (const r of boat.description) {
-    const value = typeof r.value === 'number' ? significant(r.value) : shortened(oneLine(r.value), 24);
-    rows.push([r.section === section ? '' : r.section, shortened(oneLine(r.quantity), 50), value, r.unit]);
+    const value = typeof r.value === 'number' ? significant(r.value) : shortened(oneLine(r.value), 20);
+    const lines = wrapped(r.quantity, 50, '  ')
+      .split('\n')
+      .map((l) => shortened(l, 50));
+    lines.forEach((line, i) => {
+      const last = i === lines.length - 1;
+      const part = i > 0 || r.section === section ? '' : r.section;
+      rows.push([part, line, ...(last ? [value, r.unit] : [])]);
+    });
     section = r.section;
   }
   parts.push(
