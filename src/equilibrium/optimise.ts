@@ -258,7 +258,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
       if (
         cMax < RESIDUAL_TOLERANCE &&
         violation < 1e-9 &&
-        Math.abs(gain) < 1e-9 * speed &&
+        Math.abs(gain) < 1e-8 * speed &&
         Math.abs(dSpeed) < 1e-8 * speed
       ) {
         converged = true;

@@ -1,5 +1,3 @@
-import { choleskyFactor, choleskySolve } from './cholesky.js';
-
 /**
  * minimise 1/2 x'H x - g'x subject to 0 <= x_i <= upper_i, with H symmetric positive definite.
  *
@@ -24,6 +22,7 @@ export interface BoxQp {
   readonly work: Float64Array;
   readonly rhs: Float64Array;
   readonly free: Int32Array;
+  readonly bound: Int32Array;
 }
 
 export function createBoxQp(n: number): BoxQp {
@@ -39,6 +38,7 @@ export function createBoxQp(n: number): BoxQp {
     work: new Float64Array(n * n),
     rhs: new Float64Array(n),
     free: new Int32Array(n),
+    bound: new Int32Array(n),
   };
 }
 
@@ -57,50 +57,84 @@ export function solveBoxQp(qp: BoxQp): void {
 }
 
 function activeSet(qp: BoxQp): boolean {
-  const { n, h, g, upper, x, place, work, rhs, free } = qp;
+  const { n, h, g, upper, x, place, work, rhs, free, bound } = qp;
   for (let round = 1; round <= MOST_ROUNDS; round++) {
     qp.rounds = round;
     let m = 0;
+    let k = 0; // variables at their upper bounds
     for (let i = 0; i < n; i++) {
-      if (place[i] === 0) free[m++] = i;
-      else x[i] = place[i]! < 0 ? 0 : upper[i]!;
+      const p = place[i]!;
+      if (p === 0) free[m++] = i;
+      else if (p > 0) {
+        bound[k++] = i;
+        x[i] = upper[i]!;
+      } else x[i] = 0;
     }
+    // Free block, factorised as it is copied (Cholesky row by row), and the forward substitution with it.
     for (let a = 0; a < m; a++) {
       const i = free[a]!;
       const row = i * n;
+      const ra = a * n;
       let s = g[i]!;
-      for (let j = 0; j < n; j++) if (place[j]! > 0) s -= h[row + j]! * upper[j]!;
-      rhs[a] = s;
-      for (let b = 0; b <= a; b++) work[a * n + b] = h[row + free[b]!]!;
+      for (let b = 0; b < k; b++) {
+        const j = bound[b]!;
+        s -= h[row + j]! * x[j]!;
+      }
+      let pivot = h[row + i]!;
+      for (let b = 0; b < a; b++) {
+        const rb = b * n;
+        let v = h[row + free[b]!]!;
+        for (let c = 0; c < b; c++) v -= work[ra + c]! * work[rb + c]!;
+        v *= work[rb + b]!; // the diagonal holds reciprocals
+        work[ra + b] = v;
+        pivot -= v * v;
+        s -= v * rhs[b]!;
+      }
+      if (!(pivot > 0)) throw new RangeError('the quadratic programme is not positive definite');
+      const inverse = 1 / Math.sqrt(pivot);
+      work[ra + a] = inverse;
+      rhs[a] = s * inverse;
     }
-    if (!choleskyFactor(m, n, work)) throw new RangeError('the quadratic programme is not positive definite');
-    choleskySolve(m, n, work, rhs);
-    for (let a = 0; a < m; a++) x[free[a]!] = rhs[a]!;
+    for (let a = m - 1; a >= 0; a--) {
+      const v = rhs[a]! * work[a * n + a]!;
+      rhs[a] = v;
+      const ra = a * n;
+      for (let b = 0; b < a; b++) rhs[b]! -= work[ra + b]! * v;
+    }
     let changed = false;
     for (let a = 0; a < m; a++) {
       const i = free[a]!;
-      if (x[i]! < 0) {
+      const v = rhs[a]!;
+      x[i] = v;
+      if (v < 0) {
         place[i] = -1;
         changed = true;
-      } else if (x[i]! > upper[i]!) {
+      } else if (v > upper[i]!) {
         place[i] = 1;
         changed = true;
       }
     }
-    const freed = changed;
-    for (let i = 0; i < n; i++) {
-      const p = place[i]!;
-      if (p === 0) continue;
-      // Variables bound in this very round are judged in the next.
-      if (freed && (x[i]! < 0 || x[i]! > upper[i]!)) continue;
+    // Multipliers of the variables that were bound in this round.
+    const check = (i: number, atUpper: boolean): void => {
       const row = i * n;
       let slope = g[i]!;
-      for (let j = 0; j < n; j++) slope -= h[row + j]! * x[j]!;
+      for (let a = 0; a < m; a++) slope -= h[row + free[a]!]! * rhs[a]!;
+      for (let b = 0; b < k; b++) slope -= h[row + bound[b]!]! * x[bound[b]!]!;
       const small = 1e-14 * (Math.abs(g[i]!) + h[row + i]! * upper[i]!);
-      if ((p > 0 && slope < -small) || (p < 0 && slope > small)) {
+      if (atUpper ? slope < -small : slope > small) {
         place[i] = 0;
         changed = true;
       }
+    };
+    for (let b = 0; b < k; b++) check(bound[b]!, true);
+    let f = 0;
+    for (let i = 0; i < n; i++) {
+      // Zero-bound variables: those neither free nor at their upper bound when the round began.
+      if (f < m && free[f] === i) {
+        f++;
+        continue;
+      }
+      if (place[i]! < 0) check(i, false);
     }
     if (!changed) return true;
   }

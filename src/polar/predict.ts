@@ -25,6 +25,16 @@ export const defaultWindAngles: readonly number[] = Array.from(
 /** Angle [rad] at which the sweep of a wind speed starts: where every boat that sails at all has drive. */
 const SWEEP_START = 95 * DEGREE;
 
+/** Every so many angles a state is also solved from the same angle in less wind. */
+const CROSS_CHECK = 3;
+/** Change of speed between neighbouring angles, as a share, that is looked at from all sides. */
+const JUMP = 0.15;
+
+/** The state beyond `near`, seen from `far`: a start, no more. */
+function extrapolated(near: Float64Array, far: Float64Array): Float64Array {
+  return near.map((v, i) => v + 0.8 * (v - far[i]!));
+}
+
 interface SetSweep {
   readonly set: SetSolver;
   readonly outcomes: Outcome[][];
@@ -46,17 +56,30 @@ function sweepSet(set: SetSolver, tws: readonly number[], twa: readonly number[]
   for (let i = 0; i < tws.length; i++) {
     const row: Outcome[] = new Array(twa.length);
     const previous = i > 0 ? outcomes[i - 1] : undefined;
-    const visit = (j: number, neighbour: Outcome | undefined): void => {
+    // Solved from the neighbouring angle, carried on in a straight line where two are known. Every few angles, and
+    // where that fails, also from the same angle in less wind: another start that has met other obstacles.
+    const visit = (k: number, step: 1 | -1): void => {
+      const j = order[k]!;
       const starts: Float64Array[] = [];
-      if (neighbour?.ok) starts.push(neighbour.x);
+      const near = k === startAt && step === 1 ? undefined : row[order[k - step]!];
+      const far = row[order[k - 2 * step]!];
+      if (near?.ok) starts.push(far?.ok && far !== near ? extrapolated(near.x, far.x) : near.x);
       const slower = previous?.[j];
-      if (slower?.ok) starts.push(slower.x);
-      row[j] =
+      const both = (k - startAt) % CROSS_CHECK === 0;
+      if (slower?.ok && (starts.length === 0 || both)) starts.push(slower.x);
+      let outcome =
         starts.length > 0 ? solver.solve(tws[i]!, twa[j]!, starts) : solveAlone(solver, tws[i]!, twa[j]!);
+      if (near?.ok && outcome.ok && Math.abs(outcome.speed - near.speed) > JUMP * near.speed) {
+        // A jump between neighbours: look from all sides before believing it.
+        const more = [near.x, ...(slower?.ok ? [slower.x] : []), outcome.x];
+        const again = solver.solve(tws[i]!, twa[j]!, more);
+        if (again.ok && again.speed > outcome.speed)
+          outcome = { ...again, evaluations: again.evaluations + outcome.evaluations };
+      }
+      row[j] = outcome;
     };
-    for (let k = startAt; k < order.length; k++)
-      visit(order[k]!, k > startAt ? row[order[k - 1]!] : undefined);
-    for (let k = startAt - 1; k >= 0; k--) visit(order[k]!, row[order[k + 1]!]);
+    for (let k = startAt; k < order.length; k++) visit(k, 1);
+    for (let k = startAt - 1; k >= 0; k--) visit(k, -1);
     const seeds = twa.map((angle, j) => ({ twa: angle, outcome: row[j]! }));
     outcomes.push(row);
     up.push(bestVmg(solver, tws[i]!, seeds, 1));
