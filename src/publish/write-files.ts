@@ -1,7 +1,9 @@
 import {
   closeSync,
+  copyFileSync,
   existsSync,
   fsyncSync,
+  linkSync,
   lstatSync,
   mkdirSync,
   openSync,
@@ -54,9 +56,19 @@ function writeWhole(path: string, content: string): void {
   }
 }
 
+/** A second name for a file about to be replaced, or a copy where the file system knows no second names. */
+function keep(path: string, kept: string): void {
+  rmSync(kept, { force: true });
+  try {
+    linkSync(path, kept);
+  } catch {
+    copyFileSync(path, kept);
+  }
+}
+
 /**
  * Writes all files whole or none: every one under a temporary name in the same folder first, then all renamed. What
- * was begun is removed on failure, with the folders made for it. Existing files of these names are replaced unless
+ * was begun is undone on failure: temporary files and folders go, files already replaced come back. Existing files of these names are replaced unless
  * `overwrite` is false.
  * @returns the paths written
  * @throws OutputError naming the file and the cause
@@ -67,6 +79,8 @@ export function writeFiles(
   options: { readonly overwrite?: boolean } = {},
 ): string[] {
   const begun: string[] = [];
+  const parts: string[] = [];
+  const replaced: { readonly target: string; readonly kept: string | undefined }[] = [];
   let made: string | undefined;
   let current = folder;
   try {
@@ -82,15 +96,27 @@ export function writeFiles(
       const part = join(folder, `.polarwright-${process.pid}-${i}.part`);
       rmSync(part, { force: true });
       begun.push(part);
+      parts.push(part);
       writeWhole(part, file.content);
     }
     for (const [i, target] of targets.entries()) {
       current = target;
-      renameSync(begun[i]!, target);
+      const kept = existsSync(target) ? join(folder, `.polarwright-${process.pid}-${i}.old`) : undefined;
+      if (kept !== undefined) {
+        begun.push(kept);
+        keep(target, kept);
+      }
+      renameSync(parts[i]!, target);
+      replaced.push({ target, kept });
     }
+    for (const { kept } of replaced) if (kept !== undefined) rmSync(kept, { force: true });
     return targets;
   } catch (error) {
-    for (const part of begun) rmSync(part, { force: true });
+    for (const { target, kept } of replaced.reverse()) {
+      if (kept === undefined) rmSync(target, { force: true });
+      else renameSync(kept, target);
+    }
+    for (const path of begun) rmSync(path, { force: true });
     if (made !== undefined) removeEmpty(resolve(folder), resolve(made));
     throw explained(current, error);
   }
