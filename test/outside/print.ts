@@ -1,24 +1,18 @@
-/** `npm run accuracy`: the table of comparisons with the outside, good and bad, as Markdown. */
-import { allChecks } from './all.js';
-import { runCheck } from './run.js';
+/** `npm run accuracy`: prints the table of comparisons with the outside; `--readme` also puts it into the README. */
+import { readFileSync, writeFileSync } from 'node:fs';
+import { accuracyTable } from './table.js';
 
-const show = (v: number, unit: string): string => {
-  if (unit === 'relative') return `${(100 * v).toPrecision(2)} %`;
-  const n = v === 0 ? '0' : Math.abs(v) < 1e-3 ? v.toExponential(1) : v.toPrecision(2);
-  return unit === '' ? n : `${n} ${unit}`;
-};
+export const BEGIN = '<!-- accuracy: begin -->';
+export const END = '<!-- accuracy: end -->';
 
-console.log('| source | quantity | cases | mean error | worst error | tolerance | |');
-console.log('|---|---|---|---|---|---|---|');
-let failed = 0;
-for (const check of allChecks) {
-  const r = runCheck(check);
-  const verdict = r.passed ? 'ok' : check.printOnly ? 'outside, see note' : 'FAILED';
-  if (!r.passed && !check.printOnly) failed++;
-  const unit = check.errorUnit;
-  console.log(
-    `| ${check.source} | ${check.quantity}${check.note ? ` (${check.note})` : ''} | ${r.cases} | ${show(r.mean, unit)} | ${show(r.worst, unit)} (${r.worstCase}) | ${show(check.tolerance, unit)} | ${verdict} |`,
-  );
+const { markdown, failed } = accuracyTable();
+console.log(markdown);
+if (process.argv.includes('--readme')) {
+  const readme = readFileSync('README.md', 'utf8');
+  const a = readme.indexOf(BEGIN);
+  const b = readme.indexOf(END);
+  if (a < 0 || b < a) throw new Error('README.md has no place for the accuracy table');
+  writeFileSync('README.md', `${readme.slice(0, a + BEGIN.length)}\n${markdown}\n${readme.slice(b)}`);
 }
 if (failed > 0) {
   console.error(`${failed} comparison(s) beyond their tolerance`);
