@@ -33,3 +33,18 @@ export function frictionCoefficientSchoenherr(reynolds: number): number {
   }
   return cf;
 }
+
+/**
+ * Friction of a hull with roughness: the smooth line until the fully rough plate lies above it, the corner rounded by a
+ * twelfth-power mean (judgement; the transition itself depends on the kind of roughness).
+ * @param lengthOverRoughness L/ks; infinite for a smooth hull
+ */
+export function frictionCoefficient(
+  reynolds: number,
+  lengthOverRoughness = Number.POSITIVE_INFINITY,
+): number {
+  const smooth = frictionCoefficientIttc57(reynolds);
+  if (!Number.isFinite(lengthOverRoughness)) return smooth;
+  const rough = frictionCoefficientRough(Math.max(100, lengthOverRoughness));
+  return smooth * (1 + (rough / smooth) ** 12) ** (1 / 12);
+}

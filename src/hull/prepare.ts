@@ -3,7 +3,7 @@ import { DELFT_1998, type DelftHull, residuaryDelft1998 } from './delft-1998.js'
 import { DELFT_2008, residuaryDelft2008 } from './delft-2008.js';
 import { DELFT_HEEL, HEEL_BEAM_DRAFT_LIMIT, heelFactor, heelResiduary20 } from './delft-heel.js';
 import { DELFT_KEEL, keelHeelCoefficient, keelResiduary } from './delft-keel.js';
-import { frictionCoefficientIttc57 } from './friction.js';
+import { frictionCoefficient } from './friction.js';
 import {
   type Flotation,
   floatAt,
@@ -14,6 +14,7 @@ import {
   wettedArea,
 } from './hydrostatics.js';
 import { leastPlaningDrag, ROUND_BILGE_FACTOR } from './savitsky.js';
+import { transomResistance } from './transom.js';
 import {
   HULL,
   type Hull,
@@ -46,6 +47,7 @@ function formOf(
   im: Immersed,
   wetted: number,
   z: number,
+  carried: number,
 ): HullForm {
   const { x } = p;
   const slope = Math.tan(f.trim);
@@ -55,6 +57,7 @@ function formOf(
   let first = x[0]!;
   let last = x[n - 1]!;
   let sidewaysVolume = 0;
+  let transomBreadth = 0;
   const keel = new Float64Array(n);
   for (let i = 0; i < n; i++) {
     const water = f.height + x[i]! * slope;
@@ -71,7 +74,9 @@ function formOf(
         const b = s.z[k + 1]! - water;
         if (a <= 0 !== b <= 0) {
           const t = a / (a - b);
-          bwl = Math.max(bwl, 2 * (s.y[k]! + t * (s.y[k + 1]! - s.y[k]!)));
+          const breadth = 2 * (s.y[k]! + t * (s.y[k + 1]! - s.y[k]!));
+          bwl = Math.max(bwl, breadth);
+          if (i === 0) transomBreadth = Math.max(transomBreadth, breadth);
         }
       }
     }
@@ -98,8 +103,10 @@ function formOf(
     lcfFromForward: last - im.flotationX,
     kb: im.z + draft - f.height,
     bm: im.transverse / im.volume,
-    gm: im.z + im.transverse / im.volume - z,
+    gm: carried * (im.z + im.transverse / im.volume - z),
     trim: f.trim,
+    transom: im.sections[0]!,
+    transomBreadth,
     sidewaysVolume,
   };
 }
@@ -162,7 +169,17 @@ function rangeWarnings(form: HullForm, options: HullOptions, maxFn: boolean): Ra
 export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions): Hull {
   const { water, gravity } = options;
   const p = prepareLines(resampled(lines));
-  const request = { volume: load.mass / water.density, x: load.x, z: load.z };
+  // A ballasted fin displaces water of its own: the canoe body floats the rest of the weight, whose centre lies where
+  // taking away the fin's buoyancy leaves it.
+  const keel = options.keel;
+  const keelMass = keel ? Math.min(0.5 * load.mass, keel.volume * water.density) : 0;
+  const body: HullLoad = {
+    mass: load.mass - keelMass,
+    x: (load.mass * load.x - keelMass * (keel?.x ?? load.x)) / (load.mass - keelMass),
+    z: (load.mass * load.z + keelMass * (keel?.centreDepth ?? 0)) / (load.mass - keelMass),
+  };
+  const carried = body.mass / load.mass;
+  const request = { volume: body.mass / water.density, x: body.x, z: body.z };
   const upright = floatAt(p, request, 0);
   const sheer = Math.min(
     ...p.lines.stations.map(
@@ -178,15 +195,15 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
     const heel = i * HEEL_STEP;
     const f = floatAt(p, request, heel, at);
     at = { height: f.flotation.height, trim: f.flotation.trim };
-    arms.push(rightingArmOf(f.immersed, heel, load.z));
+    arms.push(carried * rightingArmOf(f.immersed, heel, body.z));
     areas.push(wettedArea(p, f.flotation));
   }
   const righting = symmetricSpline('odd', HEEL_STEP, arms);
   const wettedBy = symmetricSpline('even', HEEL_STEP, areas);
-  const form = formOf(p, upright.flotation, upright.immersed, areas[0]!, load.z);
+  const form = formOf(p, upright.flotation, upright.immersed, areas[0]!, body.z, carried);
 
   const delft: DelftHull = form;
-  const weight = load.mass * gravity;
+  const weight = body.mass * gravity;
   const scale = Math.sqrt(gravity * form.lwl);
   const rr = (() => {
     const is98 = options.residuary === 'delft-1998';
@@ -204,7 +221,6 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
     [0, 0.2, ...DELFT_HEEL.Fn],
     [0, 0, ...heelResiduary20(delft).map((v) => Math.max(0, v))],
   );
-  const keel = options.keel;
   const keelWeight = keel ? keel.volume * water.density * gravity : 0;
   const keelUpright = keel
     ? pchip([0, 0.15, ...DELFT_KEEL.Fn], [0, 0, ...keelResiduary(delft, keel).map((v) => Math.max(0, v))])
@@ -220,16 +236,20 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
   const planing = new Float64Array(FN_COUNT);
   const heeling = new Float64Array(FN_COUNT);
   const keeling = new Float64Array(FN_COUNT);
+  const transom = new Float64Array(FN_COUNT);
   // Share of friction that feels the heeled wetted area (none when planing), and Froude number squared, held at 0.6.
   const afloat = new Float64Array(FN_COUNT).fill(1);
   const square = Float64Array.from({ length: FN_COUNT }, (_, i) => Math.min(i * FN_STEP, 0.6) ** 2);
   const volumeScale = Math.sqrt(gravity * Math.cbrt(form.volume));
   const deadrise = Math.atan((4 * (1 - form.cm) * form.canoeDraft) / form.bwl) / DEG;
-  const transom = p.x[0]!;
+  const stern = p.x[0]!;
   const reach: readonly [number, number] = options.centreReach
-    ? [options.centreReach[0] - transom, options.centreReach[1] - transom]
-    : [load.x - transom, load.x - transom];
+    ? [options.centreReach[0] - stern, options.centreReach[1] - stern]
+    : [load.x - stern, load.x - stern];
   let running = 0;
+  const lengthOverRoughness = options.roughness
+    ? (FRICTION_LENGTH * form.lwl) / options.roughness
+    : undefined;
   for (let i = 0; i < FN_COUNT; i++) {
     const fn = i * FN_STEP;
     const v = fn * scale;
@@ -238,7 +258,7 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
       residuary[i] = measuredForce(measured, v) / weight;
     } else {
       const re = (v * FRICTION_LENGTH * form.lwl) / water.kinematicViscosity;
-      friction[i] = (q * areas[0]! * frictionCoefficientIttc57(re)) / weight;
+      friction[i] = (q * areas[0]! * frictionCoefficient(re, lengthOverRoughness)) / weight;
       residuary[i] = rr.value(fn);
       const displacement = friction[i]! + residuary[i]!;
       let total = displacement;
@@ -263,6 +283,8 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
         }
       }
       // A displacement hull's own curve may dip too where the table does: the running maximum holds for both.
+      transom[i] =
+        ((1 - w) * transomResistance(v, form.transom, form.bwl, form.cwp, water.density, gravity)) / weight;
       running = Math.max(running, total);
       planing[i] = running - displacement;
       heeling[i] = heel20.value(fn) * (1 - w);
@@ -281,6 +303,7 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
     keeling: pchipSlopes(grid, keeling),
     afloat: pchipSlopes(grid, afloat),
     square: pchipSlopes(grid, square),
+    transom: pchipSlopes(grid, transom),
   };
   const last = FN_COUNT - 1;
   const inverseStep = 1 / FN_STEP;
@@ -310,6 +333,7 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
     out[HULL.friction] = f * (1 + plain(afloat, slopes.afloat) * (wettedBy.value(heel) * inverseWetted - 1));
     out[HULL.residuary] = r;
     out[HULL.planing] = u - f - r;
+    out[HULL.transom] = at(transom, slopes.transom);
     out[HULL.heel] = at(heeling, slopes.heeling) * heelFactor(heel);
     out[HULL.keelResiduary] = at(keeling, slopes.keeling);
     out[HULL.keelHeel] = keelWeight * keelHeel * plain(square, slopes.square) * smoothHeel;
@@ -319,7 +343,8 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
       out[HULL.planing]! +
       out[HULL.heel]! +
       out[HULL.keelResiduary]! +
-      out[HULL.keelHeel]!
+      out[HULL.keelHeel]! +
+      out[HULL.transom]!
     );
   };
 

@@ -47,6 +47,8 @@ export interface KeelVolume {
   /** Depth [m] of the fin's centre of volume below the design waterline, and total draft [m]. */
   readonly centreDepth: number;
   readonly draft: number;
+  /** x of that centre; left out: under the load's centre. */
+  readonly x?: number | undefined;
 }
 
 export interface HullOptions {
@@ -58,6 +60,8 @@ export interface HullOptions {
   readonly planing: boolean;
   /** Fore-and-aft reach [m] of the centre of gravity by moving the crew, x of the aft-most and foremost position. */
   readonly centreReach?: readonly [number, number] | undefined;
+  /** Height of sand grains ks [m] on the hull; 0 or left out is smooth. */
+  readonly roughness?: number | undefined;
   /** A measured upright resistance curve in place of the regressions. Speeds m/s rising, forces N. */
   readonly measured?: { readonly speed: readonly number[]; readonly force: readonly number[] } | undefined;
 }
@@ -80,6 +84,9 @@ export interface HullForm {
   readonly bm: number;
   readonly gm: number;
   readonly trim: number;
+  /** Immersed area [m2] of the after end, and its breadth at the water. */
+  readonly transom: number;
+  readonly transomBreadth: number;
   /** Integral of pi/2 T(x)^2 along the hull [m3]: the water that moves with it when it goes sideways. */
   readonly sidewaysVolume: number;
 }
@@ -101,7 +108,8 @@ export const HULL = {
   keelResiduary: 3,
   keelHeel: 4,
   planing: 5,
-  count: 6,
+  transom: 6,
+  count: 7,
 } as const;
 
 /** A hull prepared for many evaluations: it keeps tables, and allocates nothing per call. */
