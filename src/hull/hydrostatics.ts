@@ -273,63 +273,74 @@ export function wettedArea(p: PreparedLines, f: Flotation): number {
   const cos = Math.cos(f.heel);
   const slope = Math.tan(f.trim);
   let total = 0;
-  const tri = new Float64Array(9);
   for (let i = 0; i + 1 < x.length; i++) {
-    const [ya, za, yb, zb] = [p.polygonY[i]!, p.polygonZ[i]!, p.polygonY[i + 1]!, p.polygonZ[i + 1]!];
+    const ya = p.polygonY[i]!;
+    const za = p.polygonZ[i]!;
+    const yb = p.polygonY[i + 1]!;
+    const zb = p.polygonZ[i + 1]!;
+    const xa = x[i]!;
+    const xb = x[i + 1]!;
+    const wa = f.height + xa * slope;
+    const wb = f.height + xb * slope;
     const m = ya.length;
-    const half = m / 2;
+    const sheer = m / 2 - 1;
     for (let k = 0; k < m; k++) {
-      const l = (k + 1) % m;
-      // Skip the deck (between the two sheers) and the seam at the keel of a closed bottom.
-      if (k === half - 1) continue;
-      for (const [s0, k0, s1, k1, s2, k2] of [
-        [0, k, 1, k, 1, l],
-        [0, k, 1, l, 0, l],
-      ] as const) {
-        put(tri, 0, x[i + s0]!, s0 ? yb[k0]! : ya[k0]!, s0 ? zb[k0]! : za[k0]!);
-        put(tri, 3, x[i + s1]!, s1 ? yb[k1]! : ya[k1]!, s1 ? zb[k1]! : za[k1]!);
-        put(tri, 6, x[i + s2]!, s2 ? yb[k2]! : ya[k2]!, s2 ? zb[k2]! : za[k2]!);
-        total += clippedTriangle(tri, sin, cos, f.height, slope);
-      }
+      // The run between the two sheers is the deck.
+      if (k === sheer) continue;
+      const l = k + 1 < m ? k + 1 : 0;
+      const d00 = za[k]! * cos - ya[k]! * sin - wa;
+      const d10 = zb[k]! * cos - yb[k]! * sin - wb;
+      const d11 = zb[l]! * cos - yb[l]! * sin - wb;
+      const d01 = za[l]! * cos - ya[l]! * sin - wa;
+      if (d00 > 0 && d10 > 0 && d11 > 0 && d01 > 0) continue;
+      total += clipped(xa, ya[k]!, za[k]!, d00, xb, yb[k]!, zb[k]!, d10, xb, yb[l]!, zb[l]!, d11);
+      total += clipped(xa, ya[k]!, za[k]!, d00, xb, yb[l]!, zb[l]!, d11, xa, ya[l]!, za[l]!, d01);
     }
   }
   return total;
 }
 
-function put(t: Float64Array, at: number, x: number, y: number, z: number): void {
-  t[at] = x;
-  t[at + 1] = y;
-  t[at + 2] = z;
-}
-
-/** Area of the part of a triangle under the water. */
-function clippedTriangle(t: Float64Array, sin: number, cos: number, height: number, slope: number): number {
-  const d0 = t[2]! * cos - t[1]! * sin - height - t[0]! * slope;
-  const d1 = t[5]! * cos - t[4]! * sin - height - t[3]! * slope;
-  const d2 = t[8]! * cos - t[7]! * sin - height - t[6]! * slope;
-  const ux = t[3]! - t[0]!;
-  const uy = t[4]! - t[1]!;
-  const uz = t[5]! - t[2]!;
-  const vx = t[6]! - t[0]!;
-  const vy = t[7]! - t[1]!;
-  const vz = t[8]! - t[2]!;
+/** Area of the part of a triangle that is under the water; d is the height of each corner over it. */
+function clipped(
+  x0: number,
+  y0: number,
+  z0: number,
+  d0: number,
+  x1: number,
+  y1: number,
+  z1: number,
+  d1: number,
+  x2: number,
+  y2: number,
+  z2: number,
+  d2: number,
+): number {
+  const under = (d0 <= 0 ? 1 : 0) + (d1 <= 0 ? 1 : 0) + (d2 <= 0 ? 1 : 0);
+  if (under === 0) return 0;
+  const ux = x1 - x0;
+  const uy = y1 - y0;
+  const uz = z1 - z0;
+  const vx = x2 - x0;
+  const vy = y2 - y0;
+  const vz = z2 - z0;
   const cx = uy * vz - uz * vy;
   const cy = uz * vx - ux * vz;
   const cz = ux * vy - uy * vx;
   const area = 0.5 * Math.sqrt(cx * cx + cy * cy + cz * cz);
-  const under = (d0 <= 0 ? 1 : 0) + (d1 <= 0 ? 1 : 0) + (d2 <= 0 ? 1 : 0);
   if (under === 3) return area;
-  if (under === 0) return 0;
-  // The share cut off at the odd corner: product of the two edge shares.
-  const share = (a: number, b: number, c: number): number => (a / (a - b)) * (a / (a - c));
+  // The share at the odd corner: product of the shares of its two edges.
   if (under === 1) {
-    if (d0 <= 0) return area * share(d0, d1, d2);
-    if (d1 <= 0) return area * share(d1, d0, d2);
-    return area * share(d2, d0, d1);
+    if (d0 <= 0) return area * cornerShare(d0, d1, d2);
+    if (d1 <= 0) return area * cornerShare(d1, d0, d2);
+    return area * cornerShare(d2, d0, d1);
   }
-  if (d0 > 0) return area * (1 - share(d0, d1, d2));
-  if (d1 > 0) return area * (1 - share(d1, d0, d2));
-  return area * (1 - share(d2, d0, d1));
+  if (d0 > 0) return area * (1 - cornerShare(d0, d1, d2));
+  if (d1 > 0) return area * (1 - cornerShare(d1, d0, d2));
+  return area * (1 - cornerShare(d2, d0, d1));
+}
+
+function cornerShare(a: number, b: number, c: number): number {
+  return (a / (a - b)) * (a / (a - c));
 }
 
 /** The same hull with every half section drawn with k points evenly along its girth; unchanged if counts agree. */

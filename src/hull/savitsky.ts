@@ -33,14 +33,19 @@ export function flatPlateLiftFor(cl: number, deadrise: number): number {
 
 /** Mean wetted length over beam that gives CL0 at a trim and speed coefficient. */
 export function wettedLengthFor(cl0: number, trim: number, cv: number): number {
-  let lo = 1e-6;
-  let hi = 60;
-  for (let i = 0; i < 70; i++) {
-    const mid = 0.5 * (lo + hi);
-    if (flatPlateLift(trim, mid, cv) < cl0) lo = mid;
-    else hi = mid;
+  // Newton in the logarithm of the length, where the lift rises like a line between slopes 1/2 and 5/2.
+  const want = Math.log(cl0 / trim ** 1.1);
+  const squared = 1 / (cv * cv);
+  let u = 0;
+  for (let i = 0; i < 60; i++) {
+    const lambda = Math.exp(u);
+    const a = 0.012 * Math.sqrt(lambda);
+    const b = 0.0055 * lambda * lambda * Math.sqrt(lambda) * squared;
+    const step = (Math.log(a + b) - want) / ((0.5 * a + 2.5 * b) / (a + b));
+    u -= step;
+    if (Math.abs(step) < 1e-13) break;
   }
-  return 0.5 * (lo + hi);
+  return Math.min(60, Math.exp(u));
 }
 
 /** Centre of pressure ahead of the transom over mean wetted length: 0.75 - 1 / (5.21 Cv^2/lambda^2 + 2.39). */
@@ -85,9 +90,17 @@ export interface PlaningState {
 
 /** Drag at a given trim [deg] with the weight carried by the bottom. */
 export function planingAt(c: PlaningConditions, trim: number): PlaningState {
+  return planingWith(c, flatPlateLiftFor(liftCoefficient(c), c.deadrise), trim);
+}
+
+function liftCoefficient(c: PlaningConditions): number {
+  return c.weight / (0.5 * c.density * c.speed ** 2 * c.beam ** 2);
+}
+
+/** The same with CL0 at hand: it does not depend on trim. */
+function planingWith(c: PlaningConditions, cl0: number, trim: number): PlaningState {
   const cv = c.speed / Math.sqrt(c.gravity * c.beam);
-  const cl = c.weight / (0.5 * c.density * c.speed ** 2 * c.beam ** 2);
-  const cl0 = flatPlateLiftFor(cl, c.deadrise);
+  const cl = liftCoefficient(c);
   const lambda = wettedLengthFor(cl0, trim, cv);
   const ratio = bottomSpeedRatio(trim, lambda, c.deadrise);
   const v = c.speed * ratio;
@@ -159,8 +172,9 @@ export function leastPlaningDrag(
     const off = Math.max(0, reach[0] - s.pressureCentre, s.pressureCentre - reach[1]) / length;
     return s.drag / c.weight + 20 * (over + off);
   };
+  const cl0 = flatPlateLiftFor(liftCoefficient(c), c.deadrise);
   const consider = (trim: number): void => {
-    const s = planingAt(c, trim);
+    const s = planingWith(c, cl0, trim);
     const v = score(s);
     if (v < bestScore) {
       bestScore = v;
