@@ -82,6 +82,10 @@ function pointOf(r: SailingResult, d: Decimals): Point {
   return { angle, speed: rounded(f.speedKn, 6), facts: hoverFacts(f, d) };
 }
 
+/** Least distance of two labels below each other, as a share of the diagram's radius. */
+const LABEL_ROOM = 0.038;
+
+/** What the page's script draws. Each line is labelled where it ends, in two columns where lines end close by. */
 function diagramData(report: PolarReport, d: Decimals): unknown {
   const { polar, boat } = report;
   let top = 0;
@@ -92,18 +96,15 @@ function diagramData(report: PolarReport, d: Decimals): unknown {
     const points = row.map((r) => pointOf(r, d));
     for (const b of best) if (!points.some((p) => Math.abs(p.angle - b.angle) < 1e-6)) points.push(b);
     points.sort((a, b) => a.angle - b.angle);
-    let fastest = -1;
-    points.forEach((p, k) => {
-      if (p.speed !== null && (fastest < 0 || p.speed > points[fastest]!.speed!)) fastest = k;
-    });
-    if (fastest >= 0) top = Math.max(top, points[fastest]!.speed!);
+    for (const p of points) if (p.speed !== null) top = Math.max(top, p.speed);
     const name = fixed(figures(polar.bestUp[i]!).twsKn, 1).replace(/\.0$/, '');
     return {
       name: `${name} kn`,
+      mode: points.length > 1 ? 'lines+text' : 'lines+markers+text',
       angle: points.map((p) => p.angle),
       speed: points.map((p) => p.speed),
       facts: points.map((p) => p.facts),
-      label: points.map((_, k) => (k === fastest ? ` ${name}` : '')),
+      points,
       best: {
         angle: best.map((p) => p.angle),
         speed: best.map((p) => p.speed),
@@ -111,8 +112,21 @@ function diagramData(report: PolarReport, d: Decimals): unknown {
       },
     };
   });
+  const room = LABEL_ROOM * top;
+  const columns = [Number.NEGATIVE_INFINITY, Number.NEGATIVE_INFINITY];
+  const labelled = curves.map(({ points, ...curve }) => {
+    const last = points.findLast((p) => p.speed !== null);
+    const column = last === undefined ? -1 : columns.findIndex((end) => Math.abs(last.speed! - end) >= room);
+    if (column >= 0) columns[column] = last!.speed!;
+    const label = column < 0 ? '' : `${curve.name}\u00a0\u00a0\u00a0${'\u00a0'.repeat(11 * column)}`;
+    return {
+      ...curve,
+      label: points.map((p) => (p === last ? label : '')),
+      labelPlace: (last?.angle ?? 0) > 170 ? 'middle left' : 'bottom center',
+    };
+  });
   return {
-    curves,
+    curves: labelled,
     colours: COLOURS,
     dashes: DASHES,
     hover: HOVER,
@@ -239,13 +253,16 @@ function fullTable(report: PolarReport, i: number, d: Decimals): string {
 
 function boatHtml(report: PolarReport): string {
   const { boat } = report;
-  const quantities = boat.description
-    .map((r, i, all) => {
-      const first = i === 0 || all[i - 1]!.section !== r.section;
-      const value = typeof r.value === 'number' ? significant(r.value) : oneLine(r.value);
-      return `<tr>${td(first ? r.section : '', 'text')}${td(oneLine(r.quantity), 'text')}${td(value)}${td(r.unit, 'text')}</tr>`;
-    })
-    .join('');
+  const sections = [...new Set(boat.description.map((r) => r.section))].map((section) => {
+    const rows = boat.description
+      .filter((r) => r.section === section)
+      .map((r) => {
+        const value = typeof r.value === 'number' ? significant(r.value) : oneLine(r.value);
+        return `<tr>${td(oneLine(r.quantity), 'text wide')}${td(value)}${td(r.unit, 'text')}</tr>`;
+      })
+      .join('');
+    return `<table><caption>${escapeHtml(oneLine(section))}</caption><thead><tr>${th('quantity', '', true)}${th('value')}${th('unit', '', true)}</tr></thead><tbody>${rows}</tbody></table>`;
+  });
   const estimates = boat.estimates
     .map(
       (e) =>
@@ -260,10 +277,7 @@ function boatHtml(report: PolarReport): string {
     .join('');
   const none = (text: string): string => `<p class="soft">${escapeHtml(text)}</p>`;
   return [
-    scrolling(
-      'Quantities worked out from the boat file',
-      `<table id="quantities"><caption>Worked out from the boat file</caption><thead><tr>${th('part', '', true)}${th('quantity', '', true)}${th('value')}${th('unit', '', true)}</tr></thead><tbody>${quantities}</tbody></table>`,
-    ),
+    `<h3>Worked out from the boat file</h3><div id="quantities">${sections.join('')}</div>`,
     '<h3>Estimated, for want of a value in the file</h3>',
     estimates === ''
       ? none('Nothing: the file gives every value.')
@@ -340,19 +354,18 @@ ${note === '' ? '' : `<p class="soft note">${escapeHtml(note)}</p>`}
 <div class="pair">
 <section id="diagram" aria-labelledby="diagram-title">
 <h2 id="diagram-title">Polar diagram</h2>
-<p class="soft">Boat speed in knots outward, true wind angle from the course around; diamonds mark best VMG. Gaps are angles without a balanced state.</p>
+<p class="soft">Boat speed in knots outward, true wind angle from the course around; diamonds mark best VMG. Each line bears its true wind speed where it ends. Gaps are angles without a balanced state.</p>
 <div id="polar" role="img" aria-label="Polar diagram: boat speed over true wind angle, one line for each wind speed. The tables on this page hold the same figures."></div>
 <noscript><p>The diagram needs scripts; the tables hold the same figures.</p></noscript>
 </section>
 <section id="targets" aria-labelledby="targets-title">
 <h2 id="targets-title">Best VMG</h2>
 ${targetHtml('To windward', polar.bestUp, d)}
-<h3></h3>
 ${targetHtml('To leeward', polar.bestDown, d)}
 <h3>How to read it</h3>
 <dl>
 <dt>TWS, TWA</dt><dd>true wind speed, and angle from the course through the water</dd>
-<dt>AWS, AWA</dt><dd>apparent wind at ${height} m, speed, and angle from the heading</dd>
+<dt>AWS, AWA</dt><dd>apparent wind at ${height} m: speed, and angle from the heading (past 180 by the lee)</dd>
 <dt>VMG</dt><dd>speed made good straight to windward, or to leeward</dd>
 <dt>ease</dt><dd>share of the sails' full heeling moment given up: 0 is full power</dd>
 <dt>crew</dt><dd>the crew's arm as a share of fully out; below 0 to leeward</dd>
@@ -371,8 +384,7 @@ ${boatHtml(report)}
 <div class="pair">
 <section id="trust" aria-labelledby="trust-title">
 <h2 id="trust-title">How far to trust it</h2>
-<table><caption>Error to expect without calibration</caption><thead><tr>${th('where', '', true)}${th('share of boat speed')}</tr></thead><tbody>${ERROR_BANDS.map((b) => `<tr>${td(b.where, 'text')}${td(`± ${b.band}`)}</tr>`).join('')}</tbody></table>
-<p></p>
+<table class="narrow"><caption>Error to expect without calibration</caption><thead><tr>${th('where', '', true)}${th('share of boat speed')}</tr></thead><tbody>${ERROR_BANDS.map((b) => `<tr>${td(b.where, 'text wide')}${td(`± ${b.band}`)}</tr>`).join('')}</tbody></table>
 <p class="soft">${escapeHtml(ERROR_BANDS_SOURCE)}</p>
 </section>
 <section id="cautions" class="cautions" aria-labelledby="cautions-title">

@@ -19,10 +19,10 @@ export const PAGE_SCRIPT = `
       var colour = colours[i % colours.length];
       var dash = data.dashes[i % data.dashes.length];
       out.push({
-        type: 'scatterpolar', mode: 'lines+markers+text', name: c.name, legendgroup: c.name,
-        r: c.speed, theta: c.angle, text: c.label, textposition: 'middle right', cliponaxis: false,
-        textfont: { color: colour, size: 12 }, customdata: c.facts, hovertemplate: data.hover, connectgaps: false,
-        line: { color: colour, width: 2, dash: dash }, marker: { color: colour, size: 3.5 }
+        type: 'scatterpolar', mode: c.mode, name: c.name, legendgroup: c.name,
+        r: c.speed, theta: c.angle, text: c.label, textposition: c.labelPlace, cliponaxis: false,
+        textfont: { color: colour, size: narrow.matches ? 10 : 12 }, customdata: c.facts, hovertemplate: data.hover, connectgaps: false,
+        line: { color: colour, width: 2, dash: dash }, marker: { color: colour, size: 5 }
       });
       out.push({
         type: 'scatterpolar', mode: 'markers', name: c.name + ', best VMG', legendgroup: c.name, showlegend: false,
@@ -37,9 +37,9 @@ export const PAGE_SCRIPT = `
     var grid = printing ? '#cccccc' : ink('--grid');
     var sheet = printing ? '#ffffff' : ink('--sheet');
     return {
-      autosize: true, paper_bgcolor: sheet, plot_bgcolor: sheet, hovermode: 'closest',
+      autosize: !printing, width: printing ? 480 : undefined, height: printing ? 720 : undefined, paper_bgcolor: sheet, plot_bgcolor: sheet, hovermode: 'closest',
       font: { color: text, size: narrow.matches ? 11 : 13, family: 'system-ui, "Segoe UI", Roboto, sans-serif' },
-      margin: { l: 34, r: 44, t: 26, b: narrow.matches ? 120 : 84 },
+      margin: { l: narrow.matches ? 56 : 64, r: 40, t: 26, b: narrow.matches ? 120 : 84 },
       legend: { orientation: 'h', x: 0, y: -0.05, yanchor: 'top', bgcolor: 'rgba(0,0,0,0)', itemwidth: 40 },
       hoverlabel: { font: { size: 13 }, align: 'left' },
       polar: {

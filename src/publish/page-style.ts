@@ -17,11 +17,12 @@ body {
   margin: 0; background: var(--ground); color: var(--ink);
   font: 16px/1.5 system-ui, -apple-system, "Segoe UI", Roboto, "Noto Sans", sans-serif;
 }
-.page { max-width: 1240px; margin: 0 auto; padding: 28px 24px 56px; }
+.page { max-width: 1280px; margin: 0 auto; padding: 28px 24px 56px; }
 header { margin-bottom: 20px; }
 h1 { font-size: 1.9rem; line-height: 1.15; margin: 0 0 6px; letter-spacing: -0.01em; overflow-wrap: anywhere; }
 h2 { font-size: 1.25rem; margin: 0 0 12px; }
-h3 { font-size: 1rem; margin: 20px 0 8px; }
+h3 { font-size: 1rem; margin: 24px 0 8px; }
+h2 + h3 { margin-top: 0; }
 p { margin: 0 0 10px; max-width: 78ch; }
 .soft { color: var(--soft); }
 .note { overflow-wrap: anywhere; }
@@ -30,7 +31,7 @@ a { color: var(--accent); }
 section, .sheet {
   background: var(--sheet); border: 1px solid var(--rule); border-radius: 10px; padding: 20px 22px; margin: 0 0 18px;
 }
-.pair { display: grid; grid-template-columns: minmax(0, 5fr) minmax(0, 6fr); gap: 18px; align-items: start; }
+.pair { display: grid; grid-template-columns: minmax(0, 5fr) minmax(0, 7fr); gap: 18px; align-items: start; }
 .pair > section { margin-bottom: 18px; height: 100%; }
 #polar { width: 100%; height: 760px; }
 .scroll { overflow-x: auto; }
@@ -43,8 +44,12 @@ thead th { border-bottom: 1px solid var(--ink); vertical-align: bottom; }
 thead th small { display: block; font-weight: 400; color: var(--soft); font-size: 0.75rem; }
 tbody tr:nth-child(even) > * { background: var(--stripe); }
 tbody th { text-align: right; }
-.text { text-align: left; }
-.wide { white-space: normal; min-width: 16ch; overflow-wrap: anywhere; }
+.targets th, .targets td { padding: 5px 6px; font-size: 0.8125rem; }
+.targets { margin-bottom: 20px; }
+#quantities { display: grid; grid-template-columns: repeat(auto-fit, minmax(min(100%, 340px), 1fr)); gap: 20px 32px; align-items: start; }
+.narrow { margin-bottom: 12px; }
+.text, thead th.text { text-align: left; }
+.wide { white-space: normal; min-width: 14ch; overflow-wrap: anywhere; }
 tr.best > * { font-weight: 600; border-top: 1px solid var(--rule); border-bottom: 1px solid var(--rule); }
 tr.best .mark { color: var(--accent); }
 td.none { text-align: left; color: var(--soft); white-space: normal; min-width: 22ch; }
@@ -60,7 +65,7 @@ dd { margin: 0; max-width: 70ch; }
 .cautions li { margin-bottom: 6px; max-width: 78ch; }
 ul { margin: 0; padding-left: 1.2em; }
 footer { color: var(--soft); font-size: 0.875rem; }
-@media (max-width: 1000px) {
+@media (max-width: 1120px) {
   .pair { grid-template-columns: minmax(0, 1fr); gap: 0; }
   .pair > section { height: auto; }
 }
@@ -90,6 +95,8 @@ footer { color: var(--soft); font-size: 0.875rem; }
   thead { display: table-header-group; }
   tr, #polar { break-inside: avoid; }
   h2, h3, summary, caption { break-after: avoid; }
-  #polar { height: 17cm; width: 12cm; }
+  #polar { height: 720px; width: 480px; }
+  .pair > section { height: auto; }
+  .targets, .narrow, .cautions { break-inside: avoid; }
 }
 `;

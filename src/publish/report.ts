@@ -82,7 +82,8 @@ export function figures(r: SailingResult): StateFigures | NoStateFigures {
     speedKn: toKnots(r.speed),
     vmgKn: toKnots(r.vmg),
     awsKn: toKnots(r.aws),
-    awaDeg: degrees(r.awa),
+    // A little beyond 180 where the wind comes over the other quarter on a run, rather than jumping to -180.
+    awaDeg: degrees(r.awa < -Math.PI / 2 ? r.awa + 2 * Math.PI : r.awa),
     heelDeg: degrees(r.heel),
     leewayDeg: degrees(r.leeway),
     rudderDeg: degrees(r.rudder),

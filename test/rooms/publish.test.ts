@@ -102,7 +102,7 @@ describe('numbers as text', () => {
   it('become null for programs where they are not finite', () => {
     expect(rounded(Number.NaN)).toBeNull();
     expect(Object.is(rounded(-0), 0)).toBe(true);
-    expect(rounded(2.71828, 4)).toBe(2.718);
+    expect(rounded(1234.5678, 5)).toBe(1234.6);
   });
 });
 
