@@ -12,6 +12,8 @@ export interface OutsideCheck {
   readonly note?: string;
   /** A band nobody can be held to exactly is printed but does not fail the tests: say why in `note`. */
   readonly printOnly?: boolean;
+  /** Print the name of every case beside the quantity. */
+  readonly showCases?: boolean;
   readonly run: () => readonly OutsideCase[];
 }
 

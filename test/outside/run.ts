@@ -7,6 +7,7 @@ export interface CheckResult {
   readonly worst: number;
   readonly worstCase: string;
   readonly passed: boolean;
+  readonly names: readonly string[];
 }
 
 /** Runs a comparison; a comparison without cases, or with a case that is not a number, fails. */
@@ -30,6 +31,7 @@ export function runCheck(check: OutsideCheck): CheckResult {
     mean: sum / cases.length,
     worst,
     worstCase,
+    names: cases.map((c) => c.name),
     passed: !bad && worst <= check.tolerance,
   };
 }

@@ -27,9 +27,9 @@ export function accuracyTable(): { markdown: string; failed: number } {
     }
     const unit = check.errorUnit;
     const worst = r.worst === 0 ? '0' : `${show(r.worst, unit)} (${r.worstCase})`;
-    const tolerance = check.printOnly ? 'band, not held to' : show(check.tolerance, unit);
+    const tolerance = check.printOnly ? 'shown, not held to' : show(check.tolerance, unit);
     lines.push(
-      `| ${check.source} | ${check.quantity}${mark} | ${r.cases} | ${show(r.mean, unit)} | ${worst} | ${tolerance} | ${verdict} |`,
+      `| ${check.source} | ${check.quantity}${check.showCases ? `: ${r.names.join(', ')}` : ''}${mark} | ${r.cases} | ${show(r.mean, unit)} | ${worst} | ${tolerance} | ${verdict} |`,
     );
   }
   lines.push('', ...notes.map((n, i) => `[${i + 1}] ${n}  `));
