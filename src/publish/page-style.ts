@@ -46,7 +46,7 @@ tbody tr:nth-child(even) > * { background: var(--stripe); }
 tbody th { text-align: right; }
 .targets th, .targets td { padding: 5px 6px; font-size: 0.8125rem; }
 .targets { margin-bottom: 20px; }
-#quantities { display: grid; grid-template-columns: repeat(auto-fit, minmax(min(100%, 340px), 1fr)); gap: 20px 32px; align-items: start; }
+#quantities { display: grid; grid-template-columns: repeat(auto-fit, minmax(min(100%, 440px), 1fr)); gap: 20px 32px; align-items: start; }
 .narrow { margin-bottom: 12px; }
 .text, thead th.text { text-align: left; }
 .wide { white-space: normal; min-width: 14ch; overflow-wrap: anywhere; }
