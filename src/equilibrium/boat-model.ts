@@ -95,6 +95,15 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
     sailSet.evaluateInto(flow, x[X.heel]!, price(x[X.depower]!), air);
   };
 
+  /** To first order about the last full evaluation. */
+  const nearAir = (tws: number, twa: number, x: Float64Array): void => {
+    flow.tws = tws;
+    flow.twa = twa;
+    flow.speed = x[X.speed]!;
+    flow.leeway = x[X.leeway]!;
+    sailSet.nearInto(flow, x[X.heel]!, price(x[X.depower]!), air);
+  };
+
   const evaluateWater = (x: Float64Array): void => {
     foils.evaluateInto(x[X.speed]!, x[X.leeway]!, x[X.rudder]!, x[X.heel]!, hoist, water);
     hull.resistanceInto(x[X.speed]!, x[X.heel]!, hullParts);
@@ -170,7 +179,7 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
       xw[j] = x[j]! + h;
       const inAir = j !== X.rudder && j !== X.arm;
       const inWater = j !== X.depower && j !== X.arm;
-      if (inAir) evaluateAir(tws, twa, xw);
+      if (inAir) nearAir(tws, twa, xw);
       if (inWater) evaluateWater(xw);
       add(xw, c1);
       for (let i = 0; i < RES.count; i++) jacobian[i * X.count + j] = (c1[i]! - c0[i]!) / h;

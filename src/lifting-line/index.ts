@@ -3,6 +3,7 @@ export {
   inducedInto,
   type LineSpec,
   type LoadingProblem,
+  linearisedLoading,
   prepareLoading,
   solveLoading,
 } from './loading.js';

@@ -1,4 +1,4 @@
-import { type BoxQp, createBoxQp, solveBoxQp } from '../numerics/index.js';
+import { type BoxQp, createBoxQp, solveBoxQp, solveFreeBlock } from '../numerics/index.js';
 import { unknownNodes, unknownsOf, type WakeLine, wakeEnergyMatrix } from './wake.js';
 
 /**
@@ -115,4 +115,43 @@ export function inducedInto(problem: LoadingProblem, circulation: Float64Array, 
     for (let j = 0; j < n; j++) s += energy[row + j]! * circulation[j]!;
     out[i] = circulation[i]! * s;
   }
+}
+
+/**
+ * The loading for the inputs now in the problem, to first order about the loading last solved in `solver`: sections at
+ * a limit stay there, the others move by one solve with the old factor. For derivatives; `out` gets the circulation.
+ */
+export function linearisedLoading(
+  problem: LoadingProblem,
+  solver: BoxQp,
+  out: Float64Array,
+  scratch: Float64Array,
+): void {
+  const { n, width, chord, k, cl0, energy, speed, worth, cost, clMax } = problem;
+  const { x, rhs, free, bound, freeCount, boundCount } = solver;
+  out.fill(0);
+  for (let b = 0; b < boundCount; b++) {
+    const i = bound[b]!;
+    out[i] = 0.5 * speed[i]! * chord[i]! * clMax[i]!;
+  }
+  for (let a = 0; a < freeCount; a++) out[free[a]!] = x[free[a]!]!;
+  for (let i = 0; i < n; i++) scratch[i] = cost[i]! * out[i]!;
+  for (let a = 0; a < freeCount; a++) {
+    const i = free[a]!;
+    const row = i * n;
+    let plain = 0;
+    let weighted = 0;
+    for (let j = 0; j < n; j++) {
+      const e = energy[row + j]!;
+      plain += e * out[j]!;
+      weighted += e * scratch[j]!;
+    }
+    const di = cost[i]!;
+    rhs[a] =
+      width[i]! * speed[i]! * (worth[i]! + 2 * di * k[i]! * cl0[i]!) -
+      0.5 * (di * plain + weighted) -
+      ((4 * k[i]! * di * width[i]!) / chord[i]!) * out[i]!;
+  }
+  solveFreeBlock(solver, rhs);
+  for (let a = 0; a < freeCount; a++) out[free[a]!]! += rhs[a]!;
 }

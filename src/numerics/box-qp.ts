@@ -23,6 +23,9 @@ export interface BoxQp {
   readonly rhs: Float64Array;
   readonly free: Int32Array;
   readonly bound: Int32Array;
+  /** Numbers of free and upper-bound variables in the last round; `free`, `bound` and `work` belong to it. */
+  freeCount: number;
+  boundCount: number;
 }
 
 export function createBoxQp(n: number): BoxQp {
@@ -39,6 +42,8 @@ export function createBoxQp(n: number): BoxQp {
     rhs: new Float64Array(n),
     free: new Int32Array(n),
     bound: new Int32Array(n),
+    freeCount: 0,
+    boundCount: 0,
   };
 }
 
@@ -136,9 +141,31 @@ function activeSet(qp: BoxQp): boolean {
       }
       if (place[i]! < 0) check(i, false);
     }
+    qp.freeCount = m;
+    qp.boundCount = k;
     if (!changed) return true;
   }
   return false;
+}
+
+/**
+ * Solves H_FF y = r for the free variables of the last solve, with its factor; r (by free variable, in the order of
+ * `free`) is overwritten by y.
+ */
+export function solveFreeBlock(qp: BoxQp, r: Float64Array): void {
+  const { n, work, freeCount: m } = qp;
+  for (let a = 0; a < m; a++) {
+    const ra = a * n;
+    let s = r[a]!;
+    for (let b = 0; b < a; b++) s -= work[ra + b]! * r[b]!;
+    r[a] = s * work[ra + a]!;
+  }
+  for (let a = m - 1; a >= 0; a--) {
+    const ra = a * n;
+    const v = r[a]! * work[ra + a]!;
+    r[a] = v;
+    for (let b = 0; b < a; b++) r[b]! -= work[ra + b]! * v;
+  }
 }
 
 /** Projected coordinate descent from the present x; leaves `place` set by where the variables ended. */

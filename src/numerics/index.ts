@@ -1,4 +1,4 @@
-export { type BoxQp, coordinateDescent, createBoxQp, solveBoxQp } from './box-qp.js';
+export { type BoxQp, coordinateDescent, createBoxQp, solveBoxQp, solveFreeBlock } from './box-qp.js';
 export { choleskyFactor, choleskySolve } from './cholesky.js';
 export { luFactor, luSolve, luSolveTransposed } from './lu.js';
 export { boundedMinimum } from './minimum.js';

@@ -2,6 +2,7 @@ import type { SailingFlow } from '../environment/index.js';
 import {
   createLoadingSolver,
   inducedInto,
+  linearisedLoading,
   prepareLoading,
   solveLoading,
   wakeLine,
@@ -172,7 +173,7 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
     }
   };
 
-  const solve = (price: number, solver: BoxQp): void => {
+  const fillProblem = (price: number): void => {
     for (let i = 0; i < n; i++) {
       // The attached family, held at 76 deg.
       const c = roundedMax(cosB[i]!, ATTACHED_COS, 0.06);
@@ -181,6 +182,10 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
       cost[i] =
         roundedMax(c, COST_FLOOR, 0.1) - roundedMax(-price * z[i]! * Math.max(0, s), -COST_CEILING, 0.5);
     }
+  };
+
+  const solve = (price: number, solver: BoxQp): void => {
+    fillProblem(price);
     solveLoading(problem, solver);
   };
 
@@ -191,9 +196,8 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
     return s;
   };
 
-  /** Sail forces (no windage) for the loading in `solver`, added to out. */
-  const addSails = (price: number, solver: BoxQp, kept: number, out: Float64Array): void => {
-    const g = solver.x;
+  /** Sail forces (no windage) for a loading, added to out. */
+  const addSails = (price: number, g: Float64Array, kept: number, out: Float64Array): void => {
     inducedInto(problem, g, induced);
     for (let b = 0; b < sails.length; b++) {
       const { section } = sails[b]!;
@@ -270,16 +274,16 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
     out[AERO.driveZ]! += out[AERO.windageDriveZ]!;
   };
 
-  /** Share of the full loading's moment that the priced loading keeps; 1 at no price. */
-  const keptShare = (price: number): number => {
-    if (price === 0) return 1;
-    solve(0, full);
-    const whole = load(full.x);
+  /** Share of the full loading's moment that the priced loading keeps. */
+  const shareOf = (part: number, whole: number): number => {
     // A sail that can carry nothing (wind from ahead) luffs wholly: a floor on the scale of its area.
     let scale = 0;
     for (let i = 0; i < n; i++) scale += width[i]! * speed[i]! * speed[i]! * chord[i]! * z[i]!;
-    return whole > 0 ? Math.min(1, (load(priced.x) + 1e-6 * scale) / (whole + 1e-6 * scale)) : 1;
+    return whole > 0 ? Math.min(1, (part + 1e-6 * scale) / (whole + 1e-6 * scale)) : 1;
   };
+
+  // At no price the priced loading is the full one, and its solver stands for both.
+  let fullIsPriced = true;
 
   const evaluateInto = (
     flow: Readonly<SailingFlow>,
@@ -289,8 +293,31 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
   ): void => {
     out.fill(0);
     setFlow(flow, heel);
+    let kept = 1;
+    fullIsPriced = price === 0;
+    if (!fullIsPriced) solve(0, full);
     solve(price, priced);
-    addSails(price, priced, keptShare(price), out);
+    if (!fullIsPriced) kept = shareOf(load(priced.x), load(full.x));
+    addSails(price, priced.x, kept, out);
+    addWindage(flow, heel, out);
+  };
+
+  const near = new Float64Array(n);
+  const nearFull = new Float64Array(n);
+  const work = new Float64Array(n);
+
+  const nearInto = (flow: Readonly<SailingFlow>, heel: number, price: number, out: Float64Array): void => {
+    out.fill(0);
+    setFlow(flow, heel);
+    let kept = 1;
+    if (price !== 0) {
+      fillProblem(0);
+      linearisedLoading(problem, fullIsPriced ? priced : full, nearFull, work);
+    }
+    fillProblem(price);
+    linearisedLoading(problem, priced, near, work);
+    if (price !== 0) kept = shareOf(load(near), load(nearFull));
+    addSails(price, near, kept, out);
     addWindage(flow, heel, out);
   };
 
@@ -300,11 +327,12 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
     area,
     centre: [centreX, centreZ],
     evaluateInto,
+    nearInto,
     fullMoment: (flow, heel) => {
       scratch.fill(0);
       setFlow(flow, heel);
       solve(0, full);
-      addSails(0, full, 1, scratch);
+      addSails(0, full.x, 1, scratch);
       return scratch[AERO.heelMoment]!;
     },
     loading: (flow, heel, price): SailLoading[] => {

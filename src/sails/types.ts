@@ -83,6 +83,11 @@ export interface SailSet {
    * The answer depends on the arguments alone, to rounding (warm starts change speed, never the result).
    */
   evaluateInto(flow: Readonly<SailingFlow>, heel: number, price: number, out: Float64Array): void;
+  /**
+   * The same to first order about the last `evaluateInto` (sections at their limit stay there): for derivatives by small
+   * differences, at a third of the cost.
+   */
+  nearInto(flow: Readonly<SailingFlow>, heel: number, price: number, out: Float64Array): void;
   /** Heeling moment of the sails (without windage) at full power at the same flow: M_full. */
   fullMoment(flow: Readonly<SailingFlow>, heel: number): number;
   /** Loading along the height at a state, for plots and `explain`: one entry per sail. */
