@@ -33,7 +33,8 @@ export interface Attempt {
 
 export interface Optimiser {
   readonly model: ForceModel;
-  run(tws: number, twa: number, start: Float64Array): Attempt;
+  /** @param mostIterations lower than usual where a start is a guess among many */
+  run(tws: number, twa: number, start: Float64Array, mostIterations?: number): Attempt;
 }
 
 const BASIC = [X.speed, X.leeway, X.rudder, X.arm] as const;
@@ -109,7 +110,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
     return v;
   };
 
-  const run = (tws: number, twa: number, start: Float64Array): Attempt => {
+  const run = (tws: number, twa: number, start: Float64Array, mostIterations = MAX_ITERATIONS): Attempt => {
     model.prepare?.(tws, twa);
     const x = new Float64Array(X.count);
     for (let j = 0; j < X.count; j++) {
@@ -152,7 +153,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
       return false;
     };
 
-    for (; iterations < MAX_ITERATIONS; iterations++) {
+    for (; iterations < mostIterations; iterations++) {
       if (needJacobian) {
         evaluations += model.jacobianInto
           ? model.jacobianInto(tws, twa, x, jac, jacSide)
@@ -344,7 +345,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
           break;
         }
       }
-      if (iterations === MAX_ITERATIONS - 1 && Math.abs(gain) < CORNER_GAIN * speed && violation < 1e-7) {
+      if (iterations === mostIterations - 1 && Math.abs(gain) < CORNER_GAIN * speed && violation < 1e-7) {
         converged = polish();
       }
     }

@@ -43,8 +43,8 @@ export function createSolver(model: ForceModel): Solver {
   const solve = (tws: number, twa: number, starts: readonly Float64Array[]): Outcome => {
     let evaluations = 0;
     let best: Attempt | undefined;
-    const attempt = (start: Float64Array): Attempt => {
-      const a = optimiser.run(tws, twa, start);
+    const attempt = (start: Float64Array, most?: number): Attempt => {
+      const a = optimiser.run(tws, twa, start, most);
       evaluations += a.evaluations;
       if (isBalance(a) && (best === undefined || a.x[X.speed]! > best.x[X.speed]!)) best = a;
       return a;
@@ -75,9 +75,9 @@ export function createSolver(model: ForceModel): Solver {
           (excess(a) === 0 ? 0 : 1 + excess(a)) - (excess(b) === 0 ? 0 : 1 + excess(b)) || b.x[0]! - a.x[0]!,
       );
       // The fastest start of those that hold, the next clearly slower ones, and the least violating one.
-      const chosen = ranked.slice(0, thorough ? 12 : 4);
+      const chosen = ranked.slice(0, thorough ? 5 : 3);
       for (const p of chosen) {
-        const a = attempt(p.x);
+        const a = attempt(p.x, 25);
         if (!isBalance(a) && (worst === undefined || a.residual < worst.residual)) worst = a;
       }
       if (best !== undefined) return done(best);

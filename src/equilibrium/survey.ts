@@ -45,6 +45,7 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
   const INNER = [X.leeway, X.rudder, X.arm] as const;
   const ROWS = [RES.sway, RES.yaw, RES.roll] as const;
   let evaluations = 0;
+  let factored = false;
 
   /** Balances sway, yaw and roll at fixed speed, heel and depower; x is updated; NaN when it fails. */
   const surplus = (tws: number, twa: number, x: Float64Array): number => {
@@ -53,16 +54,19 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
       if (nSide > 0) model.sideConditionsInto(g);
       evaluations++;
       const worst = Math.max(Math.abs(c[RES.sway]!), Math.abs(c[RES.roll]!), Math.abs(c[RES.yaw]!));
+      // Far too fast: resistance exceeds drive by more than any balancing of the rest could mend.
+      if (c[RES.surge]! < -0.02 && worst < 0.5 * -c[RES.surge]!) return c[RES.surge]!;
       if (worst < 1e-6 + 0.01 * Math.abs(c[RES.surge]!) && it > 0) return c[RES.surge]!;
-      // The matrix changes little from round to round: made at the first, renewed once if that was not enough.
-      if (it === 0 || it === 3) {
+      // The matrix changes little from rung to rung: kept from the last one, renewed where it serves no longer.
+      if (!factored || it === 2 || it === 4) {
         evaluations += model.jacobianInto
           ? model.jacobianInto(tws, twa, x, jac, jacSide)
           : finiteDifferenceJacobian(model, tws, twa, x, c, g, jac, jacSide, work);
         for (let i = 0; i < 3; i++) {
           for (let j = 0; j < 3; j++) lu[i * 3 + j] = jac[ROWS[i]! * X.count + INNER[j]!]!;
         }
-        if (!luFactor(3, lu, pivots)) return Number.NaN;
+        factored = luFactor(3, lu, pivots);
+        if (!factored) return Number.NaN;
       }
       for (let i = 0; i < 3; i++) rhs[i] = -c[ROWS[i]!]!;
       luSolve(3, lu, pivots, rhs);
@@ -100,6 +104,7 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
     for (const heel of heels) {
       for (const depower of depowers) {
         x.fill(0);
+        factored = false;
         x[X.heel] = Math.max(lower[X.heel]!, heel);
         x[X.depower] = depower;
         let before = Number.NaN;
@@ -112,6 +117,7 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
           );
           const s = surplus(tws, twa, x);
           if (!Number.isFinite(s)) {
+            factored = false;
             before = Number.NaN;
             x[X.leeway] = 0;
             x[X.rudder] = 0;
