@@ -7,6 +7,7 @@ import {
   polarJson,
   polarPage,
   polarReport,
+  resistanceCsv,
   targetTable,
   writeFiles,
 } from '../publish/index.js';
@@ -48,11 +49,12 @@ export function polarCommand(a: PolarArguments): void {
   const stem = fileStem(reportName(a.boat, boat));
   const files = writeFiles(a.out, [
     { name: `${stem}-polar.csv`, content: polarCsv(report, decimals) },
+    { name: `${stem}-resistance.csv`, content: resistanceCsv(report.resistance, decimals) },
     { name: `${stem}-results.json`, content: polarJson(report) },
     { name: `${stem}-page.html`, content: polarPage(report, decimals) },
   ]);
   if (a.quiet) return;
-  const what = ['polar table', 'results', 'page'];
+  const what = ['polar table', 'resistance', 'results', 'page'];
   const places = files.map((f, i) => `${what[i]!.padEnd(11)}  ${join(f)}`);
   print([targetTable(report, decimals), '', cautionText(), '', ...places].join('\n'));
 }

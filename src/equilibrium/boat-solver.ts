@@ -32,6 +32,11 @@ function regimeOf(model: BoatModel, x: Float64Array, ease: number): Regime {
   return 'crew part out';
 }
 
+/** Angles from the lee quarter are given past 180 deg, so that a dead run does not jump to the other side. */
+function aroundTheStern(angle: number): number {
+  return angle < -0.5 * Math.PI ? angle + 2 * Math.PI : angle;
+}
+
 /** The report of a solved state: angles, wind over the deck, ease, regime. */
 export function describeState(set: SetSolver, tws: number, twa: number, s: Solution): SailingState {
   const { model, sailSet } = set;
@@ -61,7 +66,7 @@ export function describeState(set: SetSolver, tws: number, twa: number, s: Solut
     twa,
     twaHeading: twa - leeway,
     aws: Math.hypot(ahead, windward),
-    awa: Math.atan2(windward, ahead),
+    awa: aroundTheStern(Math.atan2(windward, ahead)),
     speed,
     vmg: speed * Math.cos(twa),
     leeway,

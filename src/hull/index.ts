@@ -1,3 +1,4 @@
+export { type ResistanceCurve, resistanceCurve } from './curve.js';
 export {
   DELFT_1998,
   type DelftHull,

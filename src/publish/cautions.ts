@@ -39,19 +39,19 @@ export const METHODS: readonly Method[] = [
   {
     part: 'wind',
     method: 'logarithmic or power-law profile over height; apparent wind in the plane square to the mast',
-    source: 'Kerwin 1978',
+    source: 'Kerwin 1978 (from memory)',
   },
   {
     part: 'sails',
     method:
       'the loading over height of all sails together that gives most drive for each heeling moment, within what a sail section can carry; induced drag from the wake, with the sea surface as mirror',
-    source: 'Munk 1921, Jones 1950; separated flow after Viterna and Corrigan 1982',
+    source: 'Munk 1921, Jones 1950; separated flow after Viterna and Corrigan 1981 (years from memory)',
   },
   {
     part: 'foils',
     method: 'lifting line on the planform with the hull as mirror; rudder in the downwash of keel or board',
     source:
-      'Weissinger 1947; Whicker and Fehlner 1958 as a check; Keuning, Katgert and Vermeulen 2006; Hoerner 1965 for section drag',
+      'Weissinger 1947; Whicker and Fehlner 1958 as a check; Keuning, Katgert and Vermeulen 2006; Hoerner 1965 for section drag (years from memory)',
   },
   {
     part: 'hull',

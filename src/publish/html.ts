@@ -3,21 +3,13 @@ import { readFileSync } from 'node:fs';
 import { createRequire } from 'node:module';
 import type { SailingResult } from '../equilibrium/index.js';
 import { CAUTIONS, ERROR_BANDS, ERROR_BANDS_SOURCE, METHODS } from './cautions.js';
+import { escapeHtml } from './escape.js';
 import { type Decimals, decimalsFor, fixed, rounded, significant } from './numbers.js';
 import { PAGE_SCRIPT } from './page-script.js';
 import { PAGE_STYLE } from './page-style.js';
 import { fileStem, oneLine } from './plain-text.js';
 import { figures, type PolarReport, type StateFigures } from './report.js';
-
-/** Text as HTML, for elements and quoted attributes. */
-export function escapeHtml(text: string): string {
-  return text
-    .replaceAll('&', '&amp;')
-    .replaceAll('<', '&lt;')
-    .replaceAll('>', '&gt;')
-    .replaceAll('"', '&quot;')
-    .replaceAll("'", '&#39;');
-}
+import { resistanceHtml } from './resistance.js';
 
 /** A value as JSON that may stand in a script element. */
 export function scriptJson(value: unknown): string {
@@ -43,6 +35,12 @@ const COLOURS = {
   light: ['#738be5', '#20045c', '#6850b9', '#5d3862', '#d4538d', '#380812', '#835c33', '#a68b11', '#214601'],
   dark: ['#75a3e0', '#b4d2fd', '#7554d4', '#945a84', '#d3a7a1', '#c24305', '#ed7c38', '#f3d228', '#d5f9d2'],
 } as const;
+
+/** The same colours as classes for inline charts. */
+function seriesStyle(): string {
+  const rules = (colours: readonly string[]): string => colours.map((c, i) => `.s${i}{stroke:${c}}`).join('');
+  return `${rules(COLOURS.light)}@media (prefers-color-scheme: dark) and screen{${rules(COLOURS.dark)}}`;
+}
 
 /** Dashes tell lines apart without colour; four of them against nine colours repeat after 36 lines. */
 const DASHES = ['solid', 'dash', 'dot', 'dashdot'] as const;
@@ -340,7 +338,7 @@ export function polarPage(report: PolarReport, decimals = 2): string {
 <meta name="referrer" content="no-referrer">
 <link rel="icon" href="data:,">
 <title>${name}: predicted speeds</title>
-<style>${PAGE_STYLE}</style>
+<style>${PAGE_STYLE}${seriesStyle()}</style>
 </head>
 <body>
 <div class="page">
@@ -348,7 +346,7 @@ export function polarPage(report: PolarReport, decimals = 2): string {
 <h1>${name}</h1>
 <p>Predicted speeds in true winds of ${escapeHtml(polar.tws.map((_, i) => fixed(figures(polar.bestUp[i]!).twsKn, 1).replace(/\.0$/, '')).join(', '))} kn at ${height} m above flat water.</p>
 ${note === '' ? '' : `<p class="soft note">${escapeHtml(note)}</p>`}
-<nav aria-label="Parts of this page"><a href="#diagram">diagram</a><a href="#targets">best VMG</a><a href="#states">all states</a><a href="#boat">the boat</a><a href="#trust">how far to trust it</a><a href="#methods">methods</a><a href="#cautions">cautions</a></nav>
+<nav aria-label="Parts of this page"><a href="#diagram">diagram</a><a href="#targets">best VMG</a><a href="#states">all states</a><a href="#resistance">resistance</a><a href="#boat">the boat</a><a href="#trust">how far to trust it</a><a href="#methods">methods</a><a href="#cautions">cautions</a></nav>
 </header>
 <main>
 <div class="pair">
@@ -376,6 +374,10 @@ ${targetHtml('To leeward', polar.bestDown, d)}
 <section id="states" aria-labelledby="states-title">
 <h2 id="states-title">All states, by wind speed</h2>
 ${polar.tws.map((_, i) => fullTable(report, i, d)).join('\n')}
+</section>
+<section id="resistance" aria-labelledby="resistance-title">
+<h2 id="resistance-title">Resistance of the hull</h2>
+${resistanceHtml(report.resistance)}
 </section>
 <section id="boat" aria-labelledby="boat-title">
 <h2 id="boat-title">The boat</h2>

@@ -65,6 +65,18 @@ dd { margin: 0; max-width: 70ch; }
 .cautions li { margin-bottom: 6px; max-width: 78ch; }
 ul { margin: 0; padding-left: 1.2em; }
 footer { color: var(--soft); font-size: 0.875rem; }
+.charts { display: grid; grid-template-columns: repeat(auto-fit, minmax(min(100%, 380px), 1fr)); gap: 22px; }
+.chart { margin: 0; break-inside: avoid; }
+.chart figcaption { font-weight: 600; margin-bottom: 6px; }
+.chart > svg { width: 100%; height: auto; display: block; }
+.chart-line { fill: none; stroke-linejoin: round; }
+.chart-grid { stroke: var(--grid); stroke-width: 1; }
+.chart-axis { stroke: var(--ink); stroke-width: 1; }
+.chart-shade { fill: var(--accent); fill-opacity: 0.09; }
+.chart-text { fill: var(--ink); font-size: 13px; }
+.chart-mark { fill: var(--sheet); stroke: var(--ink); stroke-width: 1.5; }
+.chart-key { width: 30px; height: 8px; margin-right: 6px; vertical-align: middle; }
+.chart-legend { list-style: none; padding: 0; display: flex; flex-wrap: wrap; gap: 2px 16px; font-size: 0.8125rem; margin-top: 6px; }
 @media (max-width: 1120px) {
   .pair { grid-template-columns: minmax(0, 1fr); gap: 0; }
   .pair > section { height: auto; }

@@ -2,6 +2,7 @@ import { type Boat, type DescriptionRow, describeBoat, type Estimate } from '../
 import type { SailingResult } from '../equilibrium/index.js';
 import type { Polar } from '../polar/index.js';
 import { degrees, toKnots } from '../units/index.js';
+import { type ResistanceReport, resistanceReport } from './resistance.js';
 
 /** What is to be known of the boat in a report. Plain data. */
 export interface BoatFacts {
@@ -16,6 +17,7 @@ export interface BoatFacts {
 export interface PolarReport {
   readonly boat: BoatFacts;
   readonly polar: Polar;
+  readonly resistance: ResistanceReport;
 }
 
 /** The boat's own part of a report. */
@@ -31,7 +33,7 @@ export function boatFacts(boat: Boat): BoatFacts {
 
 /** A boat and its polar, ready to be published. */
 export function polarReport(boat: Boat, polar: Polar): PolarReport {
-  return { boat: boatFacts(boat), polar };
+  return { boat: boatFacts(boat), polar, resistance: resistanceReport(boat) };
 }
 
 /** A balanced state in knots and degrees. */
@@ -83,7 +85,7 @@ export function figures(r: SailingResult): StateFigures | NoStateFigures {
     vmgKn: toKnots(r.vmg),
     awsKn: toKnots(r.aws),
     // A little beyond 180 where the wind comes over the other quarter on a run, rather than jumping to -180.
-    awaDeg: degrees(r.awa < -Math.PI / 2 ? r.awa + 2 * Math.PI : r.awa),
+    awaDeg: degrees(r.awa),
     heelDeg: degrees(r.heel),
     leewayDeg: degrees(r.leeway),
     rudderDeg: degrees(r.rudder),

@@ -24,6 +24,7 @@ const hostile = {
     bestUp: polar.bestUp.map(spoil),
     bestDown: polar.bestDown.map(spoil),
   },
+  resistance: report.resistance,
 };
 
 let browser: Browser;

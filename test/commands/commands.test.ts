@@ -30,13 +30,19 @@ describe('polar', () => {
     expect(run.out.match(/^ *(8|12)\.0 +up /gm)).toHaveLength(2);
     expect(run.out.match(/^ +down /gm)).toHaveLength(2);
     expect(run.out).toMatch(/no judgement of stability, strength or safety/);
-    for (const name of ['keelboat-polar.csv', 'keelboat-results.json', 'keelboat-page.html'])
+    for (const name of [
+      'keelboat-polar.csv',
+      'keelboat-resistance.csv',
+      'keelboat-results.json',
+      'keelboat-page.html',
+    ])
       expect(run.out).toContain(join('reports', name));
     expect(longest(run.out)).toBeLessThanOrEqual(100);
     expect(folder.list()).toEqual([
       'reports',
       join('reports', 'keelboat-page.html'),
       join('reports', 'keelboat-polar.csv'),
+      join('reports', 'keelboat-resistance.csv'),
       join('reports', 'keelboat-results.json'),
     ]);
     const csv = readFileSync(join(folder.path, 'reports', 'keelboat-polar.csv'), 'utf8')

@@ -14,6 +14,8 @@ import {
   polarJson,
   polarPage,
   polarReport,
+  RESISTANCE_PARTS,
+  resistanceCsv,
   rounded,
   significant,
   targetTable,
@@ -52,6 +54,7 @@ function hostileReport(): PolarReport {
       bestUp: polar.bestUp.map(spoil),
       bestDown: polar.bestDown.map(spoil),
     },
+    resistance: report.resistance,
   };
 }
 
@@ -280,5 +283,32 @@ describe('files', () => {
     expect(() => writeFiles(folder, files, { overwrite: false })).toThrow(/b\.txt exists already/);
     expect(readdirSync(folder)).toEqual(['b.txt']);
     expect(readFileSync(join(folder, 'b.txt'), 'utf8')).toBe('old b');
+  });
+});
+
+describe('the resistance report', () => {
+  it('has every part in a CSV that adds up, with the range of the regression marked', () => {
+    const rows = readCsv(resistanceCsv(report.resistance, 6));
+    const head = rows[0]!;
+    const at = (name: string): number => head.indexOf(name);
+    expect(rows.length).toBe(1 + 4 * 81);
+    const parts = RESISTANCE_PARTS.map((p) => at(p.key));
+    for (const r of rows.slice(1)) {
+      const sum = parts.reduce((s, i) => s + Number(r[i]), 0);
+      expect(sum).toBeCloseTo(Number(r[at('total_n')]), 4);
+      const fn = Number(r[at('froude')]);
+      if (Math.abs(fn - 0.15) > 1e-3 && Math.abs(fn - 0.6) > 1e-3) {
+        expect(r[at('regression')]).toBe(fn >= 0.15 && fn <= 0.6 ? 'inside' : 'outside');
+      }
+    }
+  });
+
+  it('draws charts that say in words what they show', () => {
+    const page = polarPage(report);
+    const from = page.indexOf('<section id="resistance"');
+    const section = page.slice(from, page.indexOf('</section>', from));
+    expect(section.match(/<figure class="chart">/g)).toHaveLength(3);
+    expect(section).toContain('speeds the wave-resistance regression was made for');
+    expect(section).not.toMatch(/NaN|Infinity/);
   });
 });
