@@ -75,6 +75,7 @@ export function assembleBoat(input: { spec: BoatSpec; estimates?: readonly Estim
     water: spec.water,
     gravity: spec.gravity,
     residuary: spec.hull.residuary,
+    roughness: spec.hull.roughness,
     planing: spec.hull.planing,
     centreReach: [reach(spec.hull.crewReach[0]), reach(spec.hull.crewReach[1])],
     measured: spec.hull.measured,

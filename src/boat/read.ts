@@ -6,6 +6,7 @@ import { DEGREE, nearest, STANDARD_GRAVITY, type UnitEngine } from '../units/ind
 import { Estimator } from './estimator.js';
 import { type ParsedFile, type Path, parseBoatFile } from './parse-file.js';
 import { readSail } from './read-sails.js';
+import { readWaves } from './read-waves.js';
 import type { BoatFileValue } from './schema.js';
 import type { BoatSpec, CrewSpec, Estimate, WeightItem } from './types.js';
 
@@ -227,6 +228,7 @@ function buildSpec(file: BoatFileValue, est: Estimator, complain: Complain): Boa
         file.hull.wave_resistance,
         () => 'delft-2008' as const,
       ),
+      roughness: est.pick(['hull', 'roughness'], file.hull.roughness, () => 0),
       measured: readMeasured(file, complain),
       crewReach: [x(crew.aftmost), x(crew.foremost)],
     },
@@ -239,6 +241,7 @@ function buildSpec(file: BoatFileValue, est: Estimator, complain: Complain): Boa
     rig,
     sails,
     sailSets: readSailSets(file, est, complain),
+    waves: readWaves(file, complain),
     limits: { heel, rudder: rudderLimit },
   };
 }

@@ -253,6 +253,15 @@ export const boatFile = {
           missing: { rule: 'delft-2008, the later fit of the same towing-tank series' },
           describe: 'Published regression for the residuary (wave-making) resistance.',
         },
+        roughness: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0, 0.01],
+          missing: { rule: '0: a smooth hull' },
+          describe:
+            'Height of an even sand roughness on the hull: 0.05 mm well kept, 0.2 mm slimy (judgement).',
+          hint: 'it is in metres when no unit is given',
+        },
         measured_resistance: {
           type: 'list',
           count: [3, 100],
@@ -625,6 +634,53 @@ export const boatFile = {
         count: [1, 4],
         describe: 'The sails of the set.',
         entry: { type: 'text', longest: 80, describe: 'Name of a sail.' },
+      },
+    },
+    waves: {
+      type: 'section',
+      describe:
+        'The sea, and what it costs in your own figures. Left out: flat water. No general method for boats this small is built in; the coefficients come from your tests or a seakeeping calculation.',
+      keys: {
+        height: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0, 5],
+          describe: 'Significant wave height in every wind. Give this or fetch.',
+        },
+        fetch: {
+          type: 'quantity',
+          kind: 'length',
+          range: [10, 1000000],
+          describe:
+            'Open water to windward: wave height then grows with the wind (JONSWAP). Give this or height.',
+        },
+        added_resistance: {
+          type: 'list',
+          count: [1, 40],
+          missing: 'required',
+          describe:
+            'Added resistance R over rho g Bwl^2/Lwl Hs^2 by true wind angle, rising; the ends hold beyond them.',
+          entry: {
+            type: 'section',
+            describe: 'One angle.',
+            keys: {
+              twa: {
+                type: 'quantity',
+                kind: 'angle',
+                range: [0, 180],
+                missing: 'required',
+                describe: 'True wind angle from the course; waves are taken to run with the wind.',
+              },
+              coefficient: {
+                type: 'quantity',
+                kind: 'ratio',
+                range: [-1, 5],
+                missing: 'required',
+                describe: 'R / (rho g Bwl^2/Lwl Hs^2) at that angle.',
+              },
+            },
+          },
+        },
       },
     },
     limits: {

@@ -26,6 +26,16 @@ export interface CrewSpec {
   readonly dragArea: number;
 }
 
+/** Waves with a user's own added resistance, R = coefficient rho g Bwl^2/Lwl Hs^2, waves running with the wind. */
+export interface WavesSpec {
+  /** Significant height [m] in every wind; or the fetch [m] from which it grows with the wind. */
+  readonly height?: number | undefined;
+  readonly fetch?: number | undefined;
+  /** True wind angles [rad], rising, and the coefficients there. */
+  readonly twa: readonly number[];
+  readonly coefficient: readonly number[];
+}
+
 /** Everything the boat file says, in SI and body axes, with estimates filled in. Plain data. */
 export interface BoatSpec {
   readonly name: string;
@@ -41,6 +51,8 @@ export interface BoatSpec {
     readonly loa: number;
     readonly planing: boolean;
     readonly residuary: ResiduaryMethod;
+    /** Height [m] of sand roughness on the hull; 0 smooth. */
+    readonly roughness: number;
     readonly measured?: { readonly speed: readonly number[]; readonly force: readonly number[] } | undefined;
     /** x reach of the crew's centre, aft-most and foremost. */
     readonly crewReach: readonly [number, number];
@@ -64,6 +76,8 @@ export interface BoatSpec {
   };
   readonly sails: readonly SailShape[];
   readonly sailSets: readonly { readonly name: string; readonly sails: readonly string[] }[];
+  /** Left out: flat water. */
+  readonly waves?: WavesSpec | undefined;
   readonly limits: {
     /** Largest heel [rad] the crew accept. */
     readonly heel: number;

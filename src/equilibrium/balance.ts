@@ -69,6 +69,8 @@ export function forceBalance(boat: Boat, state: SailingState): ForceBalance {
   drag('keel residuary', hull[HULL.keelResiduary]!);
   drag('keel residuary, heeled', hull[HULL.keelHeel]!);
   drag('planing', hull[HULL.planing]!);
+  drag('immersed transom', hull[HULL.transom]!);
+  drag('waves, added resistance', model.forces.waves);
   const keelArm = (-boat.foils.spec.keel.z + 0.45 * boat.foils.spec.keel.span) * sinH;
   const rudderArm = (-boat.foils.spec.rudder.z + 0.45 * boat.foils.spec.rudder.span) * sinH;
   drag('keel or board, induced', foils[FOIL.keelInduced]!, foils[FOIL.keelInduced]! * keelArm);

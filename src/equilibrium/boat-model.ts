@@ -1,6 +1,8 @@
 import type { Boat } from '../boat/index.js';
+import { fetchLimitedSea } from '../environment/index.js';
 import { FOIL } from '../foils/index.js';
 import { HULL } from '../hull/index.js';
+import { pchip } from '../numerics/index.js';
 import { AERO, type SailSet } from '../sails/index.js';
 import { type ForceModel, RES, X } from './types.js';
 
@@ -15,6 +17,8 @@ export interface BoatForces {
   /** Righting moments [N m] of the hull's form with the crew inboard, and of the crew's arm. */
   formMoment: number;
   crewMoment: number;
+  /** Added resistance in waves [N]; 0 on flat water. */
+  waves: number;
   /** Sums before scaling: N along and across the course, N m. */
   readonly sums: Float64Array;
 }
@@ -58,7 +62,15 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
   const water = new Float64Array(FOIL.count);
   const hullParts = new Float64Array(HULL.count);
   const sums = new Float64Array(RES.count);
-  const forces: BoatForces = { air, foils: water, hull: hullParts, formMoment: 0, crewMoment: 0, sums };
+  const forces: BoatForces = {
+    air,
+    foils: water,
+    hull: hullParts,
+    formMoment: 0,
+    crewMoment: 0,
+    waves: 0,
+    sums,
+  };
   const flow = { tws: 0, twa: 0, speed: 0, leeway: 0 };
   const hoist = spec.boardRange[1];
 
@@ -87,7 +99,24 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
 
   const price = (depower: number): number => depower / (1 - depower) / priceHeight;
 
+  // Added resistance does not depend on the state: it is worked out when wind or angle change.
+  const { waves } = spec;
+  const waveTable =
+    waves === undefined || waves.twa.length < 2 ? undefined : pchip(waves.twa, waves.coefficient);
+  let waveTws = Number.NaN;
+  let waveTwa = Number.NaN;
+  const setWaves = (tws: number, twa: number): void => {
+    if (waves === undefined || (tws === waveTws && twa === waveTwa)) return;
+    waveTws = tws;
+    waveTwa = twa;
+    const u10 = tws * boat.wind.factor(10);
+    const height = waves.height ?? fetchLimitedSea(u10, waves.fetch ?? 0, g).height;
+    const coefficient = waveTable ? waveTable.value(twa) : waves.coefficient[0]!;
+    forces.waves = (coefficient * spec.water.density * g * hull.form.bwl ** 2 * height * height) / length;
+  };
+
   const evaluateAir = (tws: number, twa: number, x: Float64Array): void => {
+    setWaves(tws, twa);
     flow.tws = tws;
     flow.twa = twa;
     flow.speed = x[X.speed]!;
@@ -124,7 +153,7 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
     const rudderDrag = water[FOIL.rudderInduced]! + water[FOIL.rudderProfile]!;
     forces.formMoment = weight * hull.rightingArm(heel);
     forces.crewMoment = crewWeight * x[X.arm]! * cosHeel;
-    sums[RES.surge] = drive * cosLee + side * sinLee - hullDrag - keelDrag - rudderDrag;
+    sums[RES.surge] = drive * cosLee + side * sinLee - hullDrag - keelDrag - rudderDrag - forces.waves;
     sums[RES.sway] = side * cosLee - drive * sinLee - water[FOIL.lift]! * cosHeel;
     sums[RES.roll] = air[AERO.heelMoment]! + water[FOIL.heelMoment]! - forces.formMoment - forces.crewMoment;
     sums[RES.yaw] =
