@@ -60,6 +60,7 @@ export function describeState(set: SetSolver, tws: number, twa: number, s: Solut
   const arm = x[X.arm]!;
   const { lower, upper } = model.bounds;
   const notes: string[] = [];
+  if (!s.proven) notes.push('balances, but not proven to be the fastest state: the search ended at an edge');
   return {
     status: 'balanced',
     tws,

@@ -18,6 +18,8 @@ import { type ForceModel, RES, X } from './types.js';
 
 export interface Attempt {
   readonly converged: boolean;
+  /** False when the state balances but the search for a faster one ended without proof. */
+  readonly optimal: boolean;
   /** True when surge falls with speed at the state: an equilibrium the boat can stay in. */
   readonly stable: boolean;
   readonly x: Float64Array;
@@ -350,6 +352,12 @@ export function createOptimiser(model: ForceModel): Optimiser {
       }
     }
 
+    const optimal = converged;
+    if (!converged && stable && violationAt(x, g) < 1e-7) {
+      const worst = Math.max(Math.abs(c[0]!), Math.abs(c[1]!), Math.abs(c[2]!), Math.abs(c[3]!));
+      if (worst < 1e-3) converged = polish() && violationAt(x, g) < 1e-7;
+    }
+
     // d V* / d twa from the multipliers: dV = -adjoint . dc/dtwa, less what the active limits take.
     if (converged) {
       const h = 1e-6;
@@ -376,6 +384,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
     const residual = Math.max(Math.abs(c[0]!), Math.abs(c[1]!), Math.abs(c[2]!), Math.abs(c[3]!));
     return {
       converged,
+      optimal,
       stable,
       x,
       residual,

@@ -9,6 +9,8 @@ export interface Solution {
   /** d speed / d twa along the optimum [m/s per rad]. */
   readonly speedSlope: number;
   readonly residual: number;
+  /** False when the state balances but is not proven to be the fastest. */
+  readonly proven: boolean;
   readonly evaluations: number;
 }
 
@@ -46,7 +48,19 @@ export function createSolver(model: ForceModel): Solver {
     const attempt = (start: Float64Array, most?: number): Attempt => {
       const a = optimiser.run(tws, twa, start, most);
       evaluations += a.evaluations;
-      if (isBalance(a) && (best === undefined || a.x[X.speed]! > best.x[X.speed]!)) best = a;
+      if (isBalance(a)) {
+        if (best === undefined || a.x[X.speed]! > best.x[X.speed]!) best = a;
+      }
+      if (a.converged && !a.stable) {
+        // The balance found is one the boat would leave by herself: look on either side of it.
+        for (const f of [0.7, 1.3]) {
+          const beside = a.x.slice();
+          beside[X.speed]! *= f;
+          const b = optimiser.run(tws, twa, beside, most);
+          evaluations += b.evaluations;
+          if (isBalance(b) && (best === undefined || b.x[X.speed]! > best.x[X.speed]!)) best = b;
+        }
+      }
       return a;
     };
     const done = (a: Attempt): Solution => ({
@@ -55,6 +69,7 @@ export function createSolver(model: ForceModel): Solver {
       speed: a.x[X.speed]!,
       speedSlope: a.speedSlope,
       residual: a.residual,
+      proven: a.optimal,
       evaluations,
     });
 
@@ -62,7 +77,7 @@ export function createSolver(model: ForceModel): Solver {
       return { ok: false, why: 'no drive', reason: 'no wind, no motion', evaluations };
     }
     for (const s of starts) attempt(s);
-    if (best !== undefined) return done(best);
+    if (best?.optimal) return done(best);
 
     let seen: Survey | undefined;
     let worst: Attempt | undefined;
@@ -80,15 +95,45 @@ export function createSolver(model: ForceModel): Solver {
         const a = attempt(p.x, 25);
         if (!isBalance(a) && (worst === undefined || a.residual < worst.residual)) worst = a;
       }
-      if (best !== undefined) return done(best);
+      if (best?.optimal) return done(best);
     }
-    return { ok: false, ...diagnose(seen!, worst), evaluations };
+    if (best !== undefined) return done(best);
+    // The most promising of the failed attempts gets a longer run.
+    if (worst !== undefined && worst.residual < 1e-3) {
+      const again = attempt(worst.x);
+      if (best !== undefined) return done(best);
+      if (again.residual <= worst.residual) worst = again;
+    }
+    return { ok: false, ...diagnose(model, seen!, worst), evaluations };
   };
 
   return { model, solve };
 }
 
-function diagnose(survey: Survey, worst: Attempt | undefined): { why: Unbalance; reason: string } {
+/** What stands in the way at a state that balances but breaks a limit; undefined when none is broken. */
+function brokenLimit(model: ForceModel, a: Attempt): { why: Unbalance; reason: string } | undefined {
+  const { lower, upper } = model.bounds;
+  const arm =
+    Math.max(a.x[X.arm]! - upper[X.arm]!, lower[X.arm]! - a.x[X.arm]!) / (upper[X.arm]! - lower[X.arm]!);
+  if (arm > 1e-6) return { why: 'overpowered', reason: armReason(arm) };
+  if (Math.abs(a.x[X.rudder]!) > upper[X.rudder]! + 1e-6) return { why: 'rudder at its limit', reason: HELM };
+  if (a.violation > 1e-6) {
+    return { why: 'foil stalled', reason: 'keel or rudder would have to lift more than it can' };
+  }
+  return undefined;
+}
+
+const HELM = 'the helm cannot hold the course';
+
+function armReason(excess: number): string {
+  return `even fully eased the heeling moment exceeds the crew's reach by ${(100 * excess).toFixed(1)} % of its range`;
+}
+
+function diagnose(
+  model: ForceModel,
+  survey: Survey,
+  worst: Attempt | undefined,
+): { why: Unbalance; reason: string } {
   if (survey.points.length === 0) {
     return {
       why: 'no drive',
@@ -103,7 +148,7 @@ function diagnose(survey: Survey, worst: Attempt | undefined): { why: Unbalance;
   if (arm > 1e-6) {
     return {
       why: 'overpowered',
-      reason: `even fully eased the heeling moment exceeds the crew's reach by ${(100 * arm).toFixed(1)} % of its range`,
+      reason: armReason(arm),
     };
   }
   if (foil > 1e-6) {
@@ -112,7 +157,18 @@ function diagnose(survey: Survey, worst: Attempt | undefined): { why: Unbalance;
       reason: `a foil would need ${(100 * (1 + foil)).toFixed(0)} % of its largest lift`,
     };
   }
-  if (rudder > 1e-6) return { why: 'rudder at its limit', reason: 'the helm cannot hold the course' };
+  if (rudder > 1e-6) return { why: 'rudder at its limit', reason: HELM };
+  if (worst !== undefined && worst.residual < 1e-8) {
+    const limit = brokenLimit(model, worst);
+    if (limit !== undefined) return limit;
+  }
+  if (worst?.converged && !worst.stable) {
+    return {
+      why: 'no drive',
+      reason:
+        'forces balance only where the boat would not stay: a little slower and she stops, a little faster and she is gone',
+    };
+  }
   return {
     why: 'not converged',
     reason: `residual ${worst?.residual.toExponential(1) ?? 'unknown'} of weight, limits exceeded by ${worst?.violation.toExponential(1) ?? 'unknown'}, last speed ${worst?.x[X.speed]?.toFixed(3) ?? '-'} m/s`,

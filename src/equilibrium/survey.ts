@@ -23,8 +23,8 @@ export interface Survey {
   readonly evaluations: number;
 }
 
-const RUNGS = 14;
-const LOWEST = 0.03;
+const RUNGS = 16;
+const LOWEST = 0.01;
 const HIGHEST = 2.6;
 
 export function createSurvey(model: ForceModel): (tws: number, twa: number, thorough: boolean) => Survey {
@@ -97,7 +97,7 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
     const depowers = (thorough ? [0, 0.3, 0.6, 0.8, 0.93, 0.99] : [0, 0.4, 0.75]).filter(
       (t) => t <= upper[X.depower]!,
     );
-    const rungs = thorough ? 9 : RUNGS;
+    const rungs = thorough ? 11 : RUNGS;
     const x = new Float64Array(X.count);
     const previous = new Float64Array(X.count);
     const armScale = upper[X.arm]! - lower[X.arm]!;
@@ -108,6 +108,7 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
         x[X.heel] = Math.max(lower[X.heel]!, heel);
         x[X.depower] = depower;
         let before = Number.NaN;
+        let failures = 0;
         // From fast to slow: the fastest stable equilibrium is met first, and leeway grows as speed falls.
         for (let k = rungs; k >= 0; k--) {
           previous.set(x);
@@ -117,6 +118,9 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
           );
           const s = surplus(tws, twa, x);
           if (!Number.isFinite(s)) {
+            // Slower still, the foils would have to lift even more from less: two failures at a walk end the ladder.
+            failures++;
+            if (failures >= 2 && x[X.speed]! < 0.3 * model.speedScale) break;
             factored = false;
             before = Number.NaN;
             x[X.leeway] = 0;
@@ -124,6 +128,7 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
             x[X.arm] = 0;
             continue;
           }
+          failures = 0;
           if (s > 0) anyDrive = true;
           if (s > 0 && before <= 0) {
             const w = s / (s - before);
