@@ -125,14 +125,23 @@ export function solveState(boat: Boat, wind: { readonly tws: number; readonly tw
   return best;
 }
 
-/** One state without neighbours: the survey's starts, then once more from full power at another heel. */
+/**
+ * A state from another side: full power, heeled the other way. Boats that the crew hold up have a best state to either
+ * side of upright now and then.
+ */
+export function otherSide(x: Float64Array): Float64Array {
+  const y = x.slice();
+  y[X.depower] = 0;
+  y[X.heel] = x[X.heel]! > 0 ? -0.05 : 0.06;
+  return y;
+}
+
+/** One state without neighbours: from guesses or the survey, then once more from the other side. */
 export function solveAlone(solver: Solver, tws: number, twa: number): Outcome {
   const first = solver.solve(tws, twa, []);
   if (!first.ok) return first;
-  const again = first.x.slice();
-  again[X.depower] = 0;
-  again[X.heel] = 0.05;
-  const second = solver.solve(tws, twa, [first.x, again]);
-  if (!second.ok || second.speed < first.speed) return first;
-  return { ...second, evaluations: first.evaluations + second.evaluations };
+  const second = solver.tryFrom(tws, twa, [otherSide(first.x)]);
+  const evaluations = first.evaluations + second.evaluations;
+  const better = second.ok && second.speed > first.speed * (1 + 1e-9) ? second : first;
+  return { ...better, evaluations };
 }

@@ -4,6 +4,7 @@ export {
   createSetSolvers,
   describeOutcome,
   describeState,
+  otherSide,
   type SetSolver,
   solveAlone,
   solveState,

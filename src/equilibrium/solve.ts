@@ -32,6 +32,8 @@ export interface Solver {
    * @param starts states to start from (neighbours of the polar); none: the survey finds starts
    */
   solve(tws: number, twa: number, starts: readonly Float64Array[]): Outcome;
+  /** The same from the given starts alone: no survey when they fail. For second looks. */
+  tryFrom(tws: number, twa: number, starts: readonly Float64Array[]): Outcome;
 }
 
 function isBalance(a: Attempt): boolean {
@@ -42,7 +44,7 @@ export function createSolver(model: ForceModel): Solver {
   const optimiser = createOptimiser(model);
   const survey = createSurvey(model);
 
-  const solve = (tws: number, twa: number, starts: readonly Float64Array[]): Outcome => {
+  const search = (tws: number, twa: number, starts: readonly Float64Array[], further: boolean): Outcome => {
     let evaluations = 0;
     let best: Attempt | undefined;
     const attempt = (start: Float64Array, most?: number): Attempt => {
@@ -76,8 +78,18 @@ export function createSolver(model: ForceModel): Solver {
     if (!(tws > 0)) {
       return { ok: false, why: 'no drive', reason: 'no wind, no motion', evaluations };
     }
-    for (const s of starts) attempt(s);
+    if (starts.length > 0) for (const s of starts) attempt(s);
+    else for (const s of guesses(model)) attempt(s, 20);
     if (best?.optimal) return done(best);
+    if (!further) {
+      if (best !== undefined) return done(best);
+      return {
+        ok: false,
+        why: 'not converged',
+        reason: 'none of the given starts led to a balance',
+        evaluations,
+      };
+    }
 
     let seen: Survey | undefined;
     let worst: Attempt | undefined;
@@ -96,6 +108,8 @@ export function createSolver(model: ForceModel): Solver {
         if (!isBalance(a) && (worst === undefined || a.residual < worst.residual)) worst = a;
       }
       if (best?.optimal) return done(best);
+      // Nowhere a surplus of drive, at full power or eased, upright or heeled: a closer look would find none.
+      if (!seen.anyDrive) break;
     }
     if (best !== undefined) return done(best);
     // The most promising of the failed attempts gets a longer run.
@@ -107,7 +121,24 @@ export function createSolver(model: ForceModel): Solver {
     return { ok: false, ...diagnose(model, seen!, worst), evaluations };
   };
 
-  return { model, solve };
+  return {
+    model,
+    solve: (tws, twa, starts) => search(tws, twa, starts, true),
+    tryFrom: (tws, twa, starts) => search(tws, twa, starts, false),
+  };
+}
+
+/** Starts where nothing is known: at displacement speed and planing, at full power and eased. */
+function guesses(model: ForceModel): Float64Array[] {
+  const guess = (froude: number, heel: number, depower: number): Float64Array => {
+    const x = new Float64Array(X.count);
+    x[X.speed] = froude * model.speedScale;
+    x[X.leeway] = 0.04;
+    x[X.heel] = heel;
+    x[X.depower] = depower;
+    return x;
+  };
+  return [guess(0.3, 0.1, 0), guess(0.35, 0.25, 0.4), guess(1, 0.1, 0.3)];
 }
 
 /** What stands in the way at a state that balances but breaks a limit; undefined when none is broken. */

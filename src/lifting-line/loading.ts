@@ -90,7 +90,7 @@ export function createLoadingSolver(problem: LoadingProblem): BoxQp {
 /** Solves for the inputs now in the problem; the circulation [m2/s] is left in `solver.x`. */
 export function solveLoading(problem: LoadingProblem, solver: BoxQp): void {
   const { n, width, chord, k, cl0, energy, speed, worth, cost, clMax } = problem;
-  const { h, g, upper } = solver;
+  const { h, g, upper, place } = solver;
   for (let i = 0; i < n; i++) {
     const di = cost[i]!;
     const row = i * n;
@@ -103,6 +103,18 @@ export function solveLoading(problem: LoadingProblem, solver: BoxQp): void {
     g[i] = width[i]! * speed[i]! * (worth[i]! + 2 * di * k[i]! * cl0[i]!);
     upper[i] = 0.5 * speed[i]! * chord[i]! * clMax[i]!;
   }
+  if (solveBoxQp(solver)) return;
+  // Costs that differ so much along the height that the problem is no longer convex, which no sailing state asks for:
+  // their geometric mean in place of the arithmetic one is convex always.
+  for (let i = 0; i < n; i++) {
+    const row = i * n;
+    for (let j = 0; j < i; j++) {
+      const v = Math.sqrt(cost[i]! * cost[j]!) * energy[row + j]!;
+      h[row + j] = v;
+      h[j * n + i] = v;
+    }
+  }
+  place.fill(0);
   solveBoxQp(solver);
 }
 

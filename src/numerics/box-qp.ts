@@ -49,19 +49,23 @@ export function createBoxQp(n: number): BoxQp {
 
 const MOST_ROUNDS = 25;
 
-/** Solves in place; throws only when H is not positive definite (a caller's mistake). */
-export function solveBoxQp(qp: BoxQp): void {
+/** Solves in place. False when H turns out not to be positive definite; x is then of no use. */
+export function solveBoxQp(qp: BoxQp): boolean {
   qp.fellBack = false;
-  if (activeSet(qp)) return;
+  let end = activeSet(qp);
+  if (end === 'solved') return true;
   qp.fellBack = true;
-  for (let attempt = 0; attempt < 6; attempt++) {
+  for (let attempt = 0; attempt < 6 && end === 'cycling'; attempt++) {
     coordinateDescent(qp, 200 * (attempt + 1), 1e-15);
-    if (activeSet(qp)) return;
+    end = activeSet(qp);
+    if (end === 'solved') return true;
   }
+  if (end === 'indefinite') return false;
   coordinateDescent(qp, 20000, 0);
+  return true;
 }
 
-function activeSet(qp: BoxQp): boolean {
+function activeSet(qp: BoxQp): 'solved' | 'cycling' | 'indefinite' {
   const { n, h, g, upper, x, place, work, rhs, free, bound } = qp;
   for (let round = 1; round <= MOST_ROUNDS; round++) {
     qp.rounds = round;
@@ -95,7 +99,7 @@ function activeSet(qp: BoxQp): boolean {
         pivot -= v * v;
         s -= v * rhs[b]!;
       }
-      if (!(pivot > 0)) throw new RangeError('the quadratic programme is not positive definite');
+      if (!(pivot > 0)) return 'indefinite';
       const inverse = 1 / Math.sqrt(pivot);
       work[ra + a] = inverse;
       rhs[a] = s * inverse;
@@ -143,9 +147,9 @@ function activeSet(qp: BoxQp): boolean {
     }
     qp.freeCount = m;
     qp.boundCount = k;
-    if (!changed) return true;
+    if (!changed) return 'solved';
   }
-  return false;
+  return 'cycling';
 }
 
 /**

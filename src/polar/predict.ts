@@ -4,6 +4,7 @@ import {
   describeOutcome,
   describeState,
   type Outcome,
+  otherSide,
   type SailingResult,
   type SetSolver,
   solveAlone,
@@ -67,12 +68,13 @@ function sweepSet(set: SetSolver, tws: readonly number[], twa: readonly number[]
       const slower = previous?.[j];
       const both = (k - startAt) % CROSS_CHECK === 0;
       if (slower?.ok && (starts.length === 0 || both)) starts.push(slower.x);
+      if (near?.ok && both) starts.push(otherSide(near.x));
       let outcome =
         starts.length > 0 ? solver.solve(tws[i]!, twa[j]!, starts) : solveAlone(solver, tws[i]!, twa[j]!);
       if (near?.ok && outcome.ok && Math.abs(outcome.speed - near.speed) > JUMP * near.speed) {
         // A jump between neighbours: look from all sides before believing it.
         const more = [near.x, ...(slower?.ok ? [slower.x] : []), outcome.x];
-        const again = solver.solve(tws[i]!, twa[j]!, more);
+        const again = solver.tryFrom(tws[i]!, twa[j]!, more);
         if (again.ok && again.speed > outcome.speed)
           outcome = { ...again, evaluations: again.evaluations + outcome.evaluations };
       }
