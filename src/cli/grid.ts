@@ -1,3 +1,4 @@
+import { toKnots } from '../units/index.js';
 import { UsageError } from './errors.js';
 
 /** Most values one list may hold. */
@@ -9,11 +10,39 @@ interface Allowed {
   readonly unit: string;
   readonly least: number;
   readonly most: number;
+  /** Other units that may stand behind the values, and how many of `unit` each is. */
+  readonly others: Readonly<Record<string, number>>;
 }
 
 /** Wind speeds [kn] and angles [deg] that make sense to ask for. */
-export const WIND_SPEEDS: Allowed = { option: '--tws', unit: 'kn', least: 0.5, most: 60 };
-export const WIND_ANGLES: Allowed = { option: '--twa', unit: 'deg', least: 0, most: 180 };
+export const WIND_SPEEDS: Allowed = {
+  option: '--tws',
+  unit: 'kn',
+  least: 0.5,
+  most: 60,
+  others: { kn: 1, 'm/s': toKnots(1), 'km/h': toKnots(1 / 3.6) },
+};
+export const WIND_ANGLES: Allowed = {
+  option: '--twa',
+  unit: 'deg',
+  least: 0,
+  most: 180,
+  others: { deg: 1, rad: 180 / Math.PI },
+};
+
+/** Splits a unit off the end of a list: "3,5,7 m/s" gives "3,5,7" and its factor. */
+function withoutUnit(text: string, allowed: Allowed): { values: string; factor: number } {
+  const match = /^(.*?[\d.])\s*([a-z/]+)\s*$/i.exec(text);
+  if (match === null) return { values: text, factor: 1 };
+  const unit = match[2]!.toLowerCase();
+  const factor = Object.hasOwn(allowed.others, unit) ? allowed.others[unit]! : undefined;
+  if (factor === undefined) {
+    throw new UsageError(
+      `${allowed.option}: "${match[2]}" is no unit of it; use ${Object.keys(allowed.others).join(', ')}, or none for ${allowed.unit}`,
+    );
+  }
+  return { values: match[1]!, factor };
+}
 
 function plainNumber(text: string, allowed: Allowed): number {
   const t = text.trim();
@@ -40,12 +69,13 @@ function inRange(value: number, allowed: Allowed): number {
  */
 export function readList(text: string, allowed: Allowed): number[] {
   const values: number[] = [];
-  const add = (value: number): void => {
-    values.push(inRange(value, allowed));
+  const { values: list, factor } = withoutUnit(text, allowed);
+  const add = (given: number): void => {
+    values.push(inRange(factor === 1 ? given : Number((given * factor).toFixed(9)), allowed));
     if (values.length > MOST)
       throw new UsageError(`${allowed.option}: more than ${MOST} values; take a larger step`);
   };
-  for (const part of text.split(',')) {
+  for (const part of list.split(',')) {
     if (part.trim() === '')
       throw new UsageError(`${allowed.option}: a value is missing in "${text}"; write a list such as 4,6,8`);
     const bounds = part.split(':');
@@ -56,8 +86,8 @@ export function readList(text: string, allowed: Allowed): number[] {
     if (bounds.length !== 3)
       throw new UsageError(`${allowed.option}: write a range as from:to:step, such as 4:20:2, not "${part}"`);
     const [from, to, step] = bounds.map((b) => plainNumber(b, allowed)) as [number, number, number];
-    inRange(from, allowed);
-    inRange(to, allowed);
+    inRange(from * factor, allowed);
+    inRange(to * factor, allowed);
     if (!(step > 0) || to < from)
       throw new UsageError(
         `${allowed.option}: in "${part}" the step must be above 0 and the end not before the start`,
@@ -73,5 +103,6 @@ export function readList(text: string, allowed: Allowed): number[] {
 /** Reads one value. @throws UsageError naming the option, the value and what is allowed */
 export function readOne(text: string, allowed: Allowed): number {
   if (/[,:]/.test(text)) throw new UsageError(`${allowed.option}: one value is wanted here, not "${text}"`);
-  return inRange(plainNumber(text, allowed), allowed);
+  const { values, factor } = withoutUnit(text, allowed);
+  return inRange(plainNumber(values, allowed) * factor, allowed);
 }

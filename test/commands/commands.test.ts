@@ -229,7 +229,7 @@ describe('new', () => {
   it.each(['dinghy', 'keelboat'])('writes a %s that check accepts', (kind) => {
     const run = runCommand(['new', 'mine.yaml', '--kind', kind], { cwd: folder.path });
     expect(run.code).toBe(0);
-    expect(folder.list()).toEqual(['mine.yaml']);
+    expect(folder.list()).toEqual(['boat.schema.json', 'mine.yaml']);
     expect(runCommand(['check', 'mine.yaml'], { cwd: folder.path }).code).toBe(0);
   });
 
@@ -242,7 +242,7 @@ describe('new', () => {
     expect(readFileSync(path, 'utf8')).toBe('mine');
     expect(runCommand(['new', '--force'], { cwd: folder.path }).code).toBe(0);
     expect(readFileSync(path, 'utf8')).toMatch(/^name: /m);
-    expect(folder.list()).toEqual(['boat.yaml']);
+    expect(folder.list()).toEqual(['boat.schema.json', 'boat.yaml']);
   });
 
   it('prints to standard output for "-", ready for the next command', () => {
