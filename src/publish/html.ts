@@ -39,7 +39,7 @@ const COLOURS = {
 /** The same colours as classes for inline charts. */
 function seriesStyle(): string {
   const rules = (colours: readonly string[]): string => colours.map((c, i) => `.s${i}{stroke:${c}}`).join('');
-  return `${rules(COLOURS.light)}@media (prefers-color-scheme: dark) and screen{${rules(COLOURS.dark)}}`;
+  return `${rules(COLOURS.light)}@media screen and (prefers-color-scheme: dark){${rules(COLOURS.dark)}}`;
 }
 
 /** Dashes tell lines apart without colour; four of them against nine colours repeat after 36 lines. */

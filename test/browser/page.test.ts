@@ -222,6 +222,36 @@ describe('the page in a browser', () => {
     expect(open.complaints).toEqual([]);
   });
 
+  it.each(['light', 'dark'] as const)(
+    'draws its charts in lines that stand out from the %s sheet',
+    async (colorScheme) => {
+      const { page, complaints, close } = await visit('page.html', { colorScheme });
+      const colours = (await page.evaluate(
+        `[...document.querySelectorAll('#resistance .chart > svg .chart-line')].map((e) => getComputedStyle(e).stroke)
+        .concat(getComputedStyle(document.querySelector('#resistance')).backgroundColor)`,
+      )) as string[];
+      const luminance = (css: string): number => {
+        const [r, g, b] = css
+          .match(/[\d.]+/g)!
+          .slice(0, 3)
+          .map((v) => {
+            const c = Number(v) / 255;
+            return c <= 0.03928 ? c / 12.92 : ((c + 0.055) / 1.055) ** 2.4;
+          }) as [number, number, number];
+        return 0.2126 * r + 0.7152 * g + 0.0722 * b;
+      };
+      const sheet = luminance(colours.pop()!);
+      expect(colours.length).toBeGreaterThan(8);
+      for (const c of colours) {
+        const l = luminance(c);
+        const contrast = (Math.max(l, sheet) + 0.05) / (Math.min(l, sheet) + 0.05);
+        expect(contrast, c).toBeGreaterThan(3);
+      }
+      expect(complaints).toEqual([]);
+      await close();
+    },
+  );
+
   it('shows hostile names as text', async () => {
     const { page, complaints, close } = await visit('hostile.html');
     expect(await page.locator('h1').textContent()).toBe(HOSTILE);

@@ -2,7 +2,9 @@ import { describe, expect, it } from 'vitest';
 import { soak } from '../support/soak.js';
 
 describe('two thousand random boats, winds and angles', () => {
-  it('end without a crash, a NaN or a hidden failure, and balance where they say so', { timeout: 180_000 }, () => {
+  it('end without a crash, a NaN or a hidden failure, and balance where they say so', {
+    timeout: 180_000,
+  }, () => {
     const c = soak(2000, 20260, 0.02);
     expect(c.crashes).toEqual([]);
     expect(c.notNumbers).toEqual([]);
