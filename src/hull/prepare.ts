@@ -1,4 +1,5 @@
 import { hermite, pchip, pchipSlopes, symmetricSpline } from '../numerics/index.js';
+import { checkLoad } from './check-load.js';
 import { DELFT_1998, type DelftHull, residuaryDelft1998 } from './delft-1998.js';
 import { DELFT_2008, residuaryDelft2008 } from './delft-2008.js';
 import { DELFT_HEEL, HEEL_BEAM_DRAFT_LIMIT, heelFactor, heelResiduary20 } from './delft-heel.js';
@@ -13,7 +14,7 @@ import {
   rightingArmOf,
   wettedArea,
 } from './hydrostatics.js';
-import { leastPlaningDrag, ROUND_BILGE_FACTOR } from './savitsky.js';
+import { leastPlaningDrag, type PlaningState, ROUND_BILGE_FACTOR } from './savitsky.js';
 import { transomResistance } from './transom.js';
 import {
   HULL,
@@ -29,7 +30,7 @@ const DEG = Math.PI / 180;
 /** Heel stations of the tables. */
 const HEEL_STEP = 2.5 * DEG;
 const HEEL_COUNT = 25;
-/** Froude grid of the resistance tables; beyond its end forces go on in proportion to V^2. */
+/** Froude grid of the resistance tables; beyond its end forces go on along their tangent in V^2. */
 const FN_STEP = 0.01;
 const FN_COUNT = 261;
 /** Share of Lwl that ITTC-57 takes as the length of friction for yachts (common practice with the Delft series). */
@@ -164,9 +165,10 @@ function rangeWarnings(form: HullForm, options: HullOptions, maxFn: boolean): Ra
  * Friction: ITTC-57 on 0.7 Lwl and the heeled wetted area, no form factor. Residuary: the Delft regression of the
  * floating hull, clipped at zero, monotone between rows, fading below the first and held above Fn 0.60. Planing: blend
  * to Savitsky's least drag by w = smoothstep((FnVol - 1.5) / 1.0), then the running maximum over speed.
- * @throws RangeError when the hull cannot carry the load
+ * @throws RangeError when the hull cannot carry the load, or a figure of the load or the options is out of range
  */
 export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions): Hull {
+  checkLoad(load, options);
   const { water, gravity } = options;
   const p = prepareLines(resampled(lines));
   // A ballasted fin displaces water of its own: the canoe body floats the rest of the weight, whose centre lies where
@@ -247,9 +249,9 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
     ? [options.centreReach[0] - stern, options.centreReach[1] - stern]
     : [load.x - stern, load.x - stern];
   let running = 0;
-  const lengthOverRoughness = options.roughness
-    ? (FRICTION_LENGTH * form.lwl) / options.roughness
-    : undefined;
+  const planingRange = planingRangeWatch();
+  const roughness = options.roughness ?? 0;
+  const lengthOverRoughness = (FRICTION_LENGTH * form.lwl) / roughness;
   for (let i = 0; i < FN_COUNT; i++) {
     const fn = i * FN_STEP;
     const v = fn * scale;
@@ -275,11 +277,14 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
               density: water.density,
               kinematicViscosity: water.kinematicViscosity,
               gravity,
+              friction: (reynolds) =>
+                frictionCoefficient(reynolds, (reynolds * water.kinematicViscosity) / (v * roughness)),
             },
             form.lwl,
             reach,
           );
           total = (1 - w) * displacement + (w * ROUND_BILGE_FACTOR * s.drag) / weight;
+          planingRange.see(s);
         }
       }
       // A displacement hull's own curve may dip too where the table does: the running maximum holds for both.
@@ -312,11 +317,12 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
 
   const resistanceInto = (speed: number, heel: number, out: Float64Array): number => {
     const fn = speed / scale;
-    let extra = 1;
     let i = Math.floor(fn * inverseStep);
     let t = fn * inverseStep - i;
+    // Beyond the table along the tangent in Fn^2, so that value and slope go on without a step.
+    let beyond = 0;
     if (i >= last) {
-      extra = (fn / grid[last]!) ** 2;
+      beyond = (fn * fn - grid[last]! ** 2) / (2 * grid[last]!);
       i = last - 1;
       t = 1;
     } else if (i < 0) {
@@ -324,8 +330,8 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
       t = 0;
     }
     const plain = (y: Float64Array, d: Float64Array): number =>
-      hermite(t, FN_STEP, y[i]!, y[i + 1]!, d[i]!, d[i + 1]!);
-    const at = (y: Float64Array, d: Float64Array): number => weight * extra * plain(y, d);
+      hermite(t, FN_STEP, y[i]!, y[i + 1]!, d[i]!, d[i + 1]!) + beyond * d[i + 1]!;
+    const at = (y: Float64Array, d: Float64Array): number => weight * plain(y, d);
     const f = at(friction, slopes.friction);
     const r = at(residuary, slopes.residuary);
     const u = at(totalUpright, slopes.total);
@@ -350,11 +356,45 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
 
   return {
     form,
-    warnings: rangeWarnings(form, options, options.planing),
+    warnings: [...rangeWarnings(form, options, options.planing), ...planingRange.warnings()],
     heelMax: (HEEL_COUNT - 1) * HEEL_STEP,
     rightingArm: (heel) => righting.value(heel),
     wetted: (heel) => wettedBy.value(heel),
     resistanceInto,
+  };
+}
+
+/**
+ * Remembers how far planing states leave the range Savitsky 1964 gives for his formulas: trim 2 to 15 deg, mean wetted
+ * length up to 4 beams, speed coefficient 0.6 to 13.
+ */
+function planingRangeWatch(): { see(s: PlaningState): void; warnings(): RangeWarning[] } {
+  const watched = [
+    { parameter: 'trim [deg]', low: 2, high: 15, of: (s: PlaningState) => s.trim },
+    { parameter: 'wetted length/beam', low: 0, high: 4, of: (s: PlaningState) => s.lambda },
+    { parameter: 'speed coefficient', low: 0.6, high: 13, of: (s: PlaningState) => s.cv },
+  ].map((w) => ({ ...w, worst: 0, value: 0 }));
+  return {
+    see: (s) => {
+      for (const w of watched) {
+        const value = w.of(s);
+        const off = Math.max(w.low - value, value - w.high);
+        if (off > w.worst) {
+          w.worst = off;
+          w.value = value;
+        }
+      }
+    },
+    warnings: () =>
+      watched
+        .filter((w) => w.worst > 0)
+        .map((w) => ({
+          method: 'planing, Savitsky 1964',
+          parameter: w.parameter,
+          value: w.value,
+          range: [w.low, w.high],
+          treatment: 'computed outside its range at some planing speeds',
+        })),
   };
 }
 

@@ -7,13 +7,18 @@ import type { Lines, MainDimensions, Station } from './types.js';
  * coefficient and centre of buoyancy and those of the waterline for its coefficient. Local draft is area over breadth,
  * so that displacement = Cp Cm Lwl Bwl Tc holds by construction. Topsides run straight to a sheer of the given beam.
  * The shapes are a judgement; the coefficients are met.
+ * @throws RangeError naming the dimension or coefficient, its value and what is allowed
  */
 export function generateRoundBilge(d: MainDimensions): Lines {
+  positive('lwl', d.lwl);
+  positive('bwl', d.bwl);
+  positive('canoeDraft', d.canoeDraft);
+  positive('freeboard', d.freeboard);
   check('cp', d.cp, 0.42, 0.72);
   check('cm', d.cm, 0.51, 0.95);
   check('cwp', d.cwp, 0.55, 0.9);
   check('lcbAft', d.lcbAft, -0.06, 0.1);
-  if (!(d.beamMax >= d.bwl))
+  if (!(d.beamMax >= d.bwl && Number.isFinite(d.beamMax)))
     throw new RangeError(`beam ${d.beamMax} m is less than the waterline beam ${d.bwl} m`);
   const n = superellipseExponent(d.cm);
   const fullest = -d.lcbAft; // of Lwl from amidships, forward positive
@@ -57,6 +62,11 @@ export function generateRoundBilge(d: MainDimensions): Lines {
     stations.push({ x: x * d.lwl, y, z });
   }
   return { stations };
+}
+
+function positive(name: string, value: number): void {
+  if (!(value > 0 && Number.isFinite(value)))
+    throw new RangeError(`${name} is ${value} m; it must be a finite length above 0`);
 }
 
 function check(name: string, value: number, low: number, high: number): void {

@@ -4,6 +4,7 @@ import {
   generateRoundBilge,
   HULL,
   type Hull,
+  type HullOptions,
   immerse,
   type MainDimensions,
   prepareHull,
@@ -219,6 +220,118 @@ describe('resistance of random hulls', () => {
     );
     expect(h.resistanceInto(2, 0, out)).toBeCloseTo(45, 0);
     expect(h.resistanceInto(3, 0, out)).toBeCloseTo(160, -0.5);
+  });
+});
+
+describe('prepared hulls at the edges of their tables and inputs', () => {
+  const out = new Float64Array(HULL.count);
+  const d = randomDimensions(seeded(40));
+  const volume = d.cp * d.cm * d.lwl * d.bwl * d.canoeDraft;
+  const load = { mass: volume * SALT.density, x: -d.lcbAft * d.lwl, z: 0.05 * d.lwl };
+  const options: HullOptions = {
+    water: SALT,
+    gravity: G,
+    residuary: 'delft-2008',
+    planing: true,
+    centreReach: [load.x - 0.06 * d.lwl, load.x + 0.04 * d.lwl],
+  };
+  const lines = generateRoundBilge(d);
+
+  it('keep value and slope across the end of the Froude table, planing or not', () => {
+    const e = 1e-6;
+    for (const planing of [true, false]) {
+      const h = prepareHull(lines, load, { ...options, planing });
+      const c = Math.sqrt(G * h.form.lwl);
+      const r = (fn: number): number => h.resistanceInto(fn * c, 0.15, out);
+      const before = (r(2.6 - e) - r(2.6 - 3 * e)) / (2 * e);
+      const after = (r(2.6 + 3 * e) - r(2.6 + e)) / (2 * e);
+      expect(Math.abs(after / before - 1)).toBeLessThan(1e-4);
+      expect(Math.abs(r(2.6 + e) / r(2.6 - e) - 1)).toBeLessThan(1e-5);
+      expect(r(5)).toBeGreaterThan(r(2.6));
+    }
+  });
+
+  it('keep all ratios when densities and masses grow alike', () => {
+    const k = 7.3;
+    const a = prepareHull(lines, load, options);
+    const b = prepareHull(
+      lines,
+      { ...load, mass: k * load.mass },
+      { ...options, water: { ...SALT, density: k * SALT.density } },
+    );
+    for (const v of [0.5, 2, 4, 8]) {
+      for (const heel of [0, 0.3]) {
+        const ratio = b.resistanceInto(v, heel, out) / a.resistanceInto(v, heel, out);
+        expect(Math.abs(ratio / k - 1)).toBeLessThan(1e-12);
+      }
+    }
+    expect(Math.abs(b.rightingArm(0.3) / a.rightingArm(0.3) - 1)).toBeLessThan(1e-12);
+  });
+
+  it('are slowed by roughness at every speed, planing too', () => {
+    const smooth = prepareHull(lines, load, options);
+    const rough = prepareHull(lines, load, { ...options, roughness: 2e-4 });
+    const none = prepareHull(lines, load, { ...options, roughness: 0 });
+    for (const fn of [0.2, 0.4, 0.7, 1, 1.5, 2]) {
+      const v = fn * Math.sqrt(G * smooth.form.lwl);
+      const r = smooth.resistanceInto(v, 0, out);
+      expect(rough.resistanceInto(v, 0, out)).toBeGreaterThan(1.02 * r);
+      expect(none.resistanceInto(v, 0, out)).toBe(r);
+    }
+  });
+
+  it('warn where planing states leave the published range, and only hulls that plane', () => {
+    // A light 4.2 m dinghy: its trim of least drag falls below 2 deg when fast, its bottom is longer than 4 beams.
+    const light = generateRoundBilge({
+      lwl: 3.9,
+      bwl: 1.05,
+      canoeDraft: 0.099,
+      cp: 0.57,
+      cm: 0.7,
+      cwp: 0.69,
+      lcbAft: 0.035,
+      freeboard: 0.33,
+      beamMax: 1.4,
+    });
+    const warned = (planing: boolean) =>
+      prepareHull(
+        light,
+        { mass: 165, x: -0.1365, z: 0.35 },
+        { ...options, planing, centreReach: [-0.53, 0.17] },
+      ).warnings;
+    const planing = warned(true).filter((w) => w.method.includes('Savitsky'));
+    expect(planing.map((w) => w.parameter)).toEqual(['trim [deg]', 'wetted length/beam']);
+    for (const w of planing) {
+      expect(w.value < w.range[0] || w.value > w.range[1], w.parameter).toBe(true);
+    }
+    expect(warned(false).filter((w) => w.method.includes('Savitsky'))).toEqual([]);
+  });
+
+  it('refuse figures that could only end in no number', () => {
+    const keel = { volume: 0.02, centreDepth: 0.5, draft: 1 };
+    const refuse = (l: object, o: object, message: RegExp): void =>
+      expect(() => prepareHull(lines, { ...load, ...l }, { ...options, ...o })).toThrow(message);
+    refuse({ mass: Number.NaN }, {}, /mass in the hull is NaN kg/);
+    refuse({ mass: 0 }, {}, /mass in the hull is 0 kg/);
+    refuse({ x: Number.NaN }, {}, /x of the centre of mass/);
+    refuse({}, { roughness: -1e-4 }, /roughness of the hull is -0\.0001 m/);
+    refuse({}, { keel: { ...keel, volume: 0 } }, /volume of the keel is 0 m3/);
+    refuse({}, { keel: { ...keel, draft: 0 } }, /draft of the keel is 0 m/);
+    refuse({}, { centreReach: [1, -1] }, /aft end comes first/);
+    refuse({}, { measured: { speed: [1, 2], force: [10] } }, /2 speeds and 1 forces/);
+    refuse({}, { measured: { speed: [1, 2], force: [10, Number.NaN] } }, /measured force NaN N at 2 m\/s/);
+    refuse({}, { measured: { speed: [1, 2], force: [-5, 10] } }, /measured force -5 N at 1 m\/s/);
+    refuse({}, { measured: { speed: [2, 1], force: [1, 2] } }, /measured speed 1 m\/s comes after 2/);
+  });
+
+  it('cannot be generated from lengths that are none', () => {
+    for (const name of ['lwl', 'bwl', 'canoeDraft', 'freeboard'] as const) {
+      for (const value of [Number.NaN, 0, -1, Number.POSITIVE_INFINITY]) {
+        expect(() => generateRoundBilge({ ...d, [name]: value }), `${name} ${value}`).toThrow(
+          `${name} is ${value} m`,
+        );
+      }
+    }
   });
 });
 
