@@ -27,7 +27,16 @@ export {
   stationWeights,
   wettedArea,
 } from './hydrostatics.js';
+export {
+  linesFromMesh,
+  type MeshAxis,
+  type MeshPlacement,
+  readObj,
+  readStl,
+  type Triangles,
+} from './mesh.js';
 export { prepareHull } from './prepare.js';
+export { type RightingPoint, rightingCurve } from './righting-curve.js';
 export { generateRoundBilge } from './round-bilge.js';
 export {
   deadriseLift,
@@ -39,4 +48,11 @@ export {
   planingEquilibrium,
   ROUND_BILGE_FACTOR,
 } from './savitsky.js';
+export {
+  type FairedLines,
+  linesFromStations,
+  OffsetsError,
+  readOffsets,
+  type WrittenStation,
+} from './stations.js';
 export * from './types.js';
