@@ -69,7 +69,7 @@ export function assembleBoat(input: { spec: BoatSpec; estimates?: readonly Estim
   const { spec, estimates = [] } = input;
   const { mass, x, z } = massOf(spec);
   const wind = windProfileOf(spec);
-  const lines = generateRoundBilge(spec.hull.dimensions);
+  const lines = spec.hull.lines ?? generateRoundBilge(spec.hull.dimensions);
   const reach = (crewX: number): number => x + (spec.crew.mass / mass) * (crewX - spec.crew.x);
   const options: HullOptions = {
     water: spec.water,

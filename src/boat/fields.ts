@@ -10,6 +10,8 @@ interface Common {
   readonly hint?: string;
   /** `required`; or the rule by which a missing value is found, with its source; or nothing: simply absent. */
   readonly missing?: 'required' | { readonly rule: string };
+  /** A required key may be left out when this key stands beside it. */
+  readonly unless?: string;
 }
 
 export interface QuantityField extends Common {

@@ -238,6 +238,7 @@ export function parseBoatFile(
     if (field.type === 'section') {
       for (const [key, inner] of Object.entries(field.keys)) {
         if (inner.missing !== 'required' || seen.has(key)) continue;
+        if (inner.unless !== undefined && seen.has(inner.unless)) continue;
         const near = [...seen.keys()].find((k) => !Object.hasOwn(field.keys, k) && nearest(k, [key]) === key);
         if (near === undefined) {
           complain([...path, key], `missing: ${wanted(inner)} is needed`, hintOf(inner), startOf(node));

@@ -1,11 +1,12 @@
 import type { UnitEngine } from '../units/index.js';
 import { assembleBoat } from './assemble.js';
+import type { ReadBeside } from './beside.js';
 import { BoatFileError } from './problems.js';
 import { readBoatSpec } from './read.js';
 import type { Boat } from './types.js';
 
 /**
- * Reads a boat file's text and assembles the boat. Pure: no files are opened.
+ * Reads a boat file's text and assembles the boat. Pure: no files are opened but by `beside`.
  * @param fileName only for messages
  * @param engine reads unusual quantities ("2 * 3.1 m"); see `loadUnitEngine`
  * @throws BoatFileError with every problem's line, column, key and hint
@@ -14,8 +15,9 @@ export function readWhole(
   text: string | Uint8Array,
   fileName = 'boat file',
   engine?: () => UnitEngine,
+  beside?: ReadBeside,
 ): Boat {
-  const read = readBoatSpec(text, fileName, engine);
+  const read = readBoatSpec(text, fileName, engine, beside);
   try {
     return assembleBoat(read);
   } catch (error) {

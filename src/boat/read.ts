@@ -1,10 +1,12 @@
 import { air, OPEN_WATER_ROUGHNESS, water } from '../environment/index.js';
 import type { FoilSpec } from '../foils/index.js';
-import type { MainDimensions } from '../hull/index.js';
+import type { FairedLines, MainDimensions } from '../hull/index.js';
 import type { SailShape } from '../sails/index.js';
 import { DEGREE, nearest, STANDARD_GRAVITY, type UnitEngine } from '../units/index.js';
+import { nothingBeside, type ReadBeside } from './beside.js';
 import { Estimator } from './estimator.js';
 import { type ParsedFile, type Path, parseBoatFile } from './parse-file.js';
+import { readLines } from './read-lines.js';
 import { readSail } from './read-sails.js';
 import { readWaves } from './read-waves.js';
 import type { BoatFileValue } from './schema.js';
@@ -19,6 +21,9 @@ const CREW_DRAG = { hiking: 0.4, trapeze: 0.55, rail: 0.3 } as const;
 /** Share of that area which each further body of a row on the rail adds, in the lee of its neighbour; judgement. */
 const RAIL_SHELTER = 0.4;
 
+/** Largest misfit between the volume of given lines and that of the weights: the hull is floated at its own level. */
+const LINES_MISFIT = 0.4;
+
 type Complain = ParsedFile['complain'];
 
 /**
@@ -27,6 +32,7 @@ type Complain = ParsedFile['complain'];
  * @param input the text, or its bytes in UTF-8
  * @param fileName only for messages
  * @param engine reads unusual quantities ("2 * 3.1 m"); see `loadUnitEngine`
+ * @param beside reads the files it names
  * @returns everything in SI and body axes (origin amidships of the design waterline, x forward, z up)
  * @throws BoatFileError with every problem's line, column, key and hint
  */
@@ -34,18 +40,50 @@ export function readBoatSpec(
   input: string | Uint8Array,
   fileName = 'boat file',
   engine?: () => UnitEngine,
+  beside: ReadBeside = nothingBeside,
 ): { spec: BoatSpec; estimates: Estimate[] } {
   const parsed = parseBoatFile(input, fileName, engine);
   // A part that could not be read would only cause false complaints about how the parts fit.
   parsed.problems.throwIfAny();
   const estimator = new Estimator();
-  const spec = buildSpec(parsed.value, estimator, parsed.complain);
+  const faired = readLines(parsed.value, parsed.complain, beside);
+  parsed.problems.throwIfAny();
+  const spec = buildSpec(withLines(parsed.value, faired), estimator, parsed.complain, faired);
   parsed.problems.throwIfAny();
   if (spec === undefined) throw new Error('a boat file was rejected without a reason');
   return { spec, estimates: estimator.estimates };
 }
 
-function buildSpec(file: BoatFileValue, est: Estimator, complain: Complain): BoatSpec | undefined {
+/** The file as if the main dimensions measured from its lines had been written in it. */
+function withLines(file: BoatFileValue, faired: FairedLines | undefined): BoatFileValue {
+  if (faired === undefined) return file;
+  const d = faired.dimensions;
+  const stations = faired.lines.stations;
+  const loa = stations[stations.length - 1]!.x - stations[0]!.x;
+  return {
+    ...file,
+    hull: {
+      ...file.hull,
+      waterline_length: d.lwl,
+      waterline_beam: d.bwl,
+      beam_overall: d.beamMax,
+      length_overall: file.hull.length_overall ?? Math.max(loa, d.lwl),
+      canoe_draft: d.canoeDraft,
+      freeboard: d.freeboard,
+      prismatic: d.cp,
+      midship: d.cm,
+      waterplane: d.cwp,
+      buoyancy_aft_of_stem: (0.5 + d.lcbAft) * d.lwl,
+    },
+  };
+}
+
+function buildSpec(
+  file: BoatFileValue,
+  est: Estimator,
+  complain: Complain,
+  faired: FairedLines | undefined,
+): BoatSpec | undefined {
   const lwl = file.hull.waterline_length;
   /** x of a place given as a distance aft of the fore end of the waterline, and back. */
   const x = (aft: number): number => 0.5 * lwl - aft;
@@ -221,6 +259,7 @@ function buildSpec(file: BoatFileValue, est: Estimator, complain: Complain): Boa
     gravity: STANDARD_GRAVITY,
     hull: {
       dimensions,
+      lines: faired?.lines,
       loa: hull.loa,
       planing,
       residuary: est.pick(
@@ -341,6 +380,17 @@ function readHull(
   }
   // With the draft given, the midship coefficient follows from the displacement; given too, the three must agree.
   const needed = volume / (cp * lwl * bwl * given);
+  if (h.lines !== undefined) {
+    if (!(Math.abs(needed / h.midship! - 1) < LINES_MISFIT)) {
+      complain(
+        ['hull', 'lines'],
+        `up to their waterline the lines displace ${say((volume * h.midship!) / needed)} m3, but weights and crew need ${say(volume)} m3`,
+        'check unit and waterline_height of the lines, and the masses',
+      );
+      return undefined;
+    }
+    return { loa, beamMax, freeboard, canoeDraft: given, cp, cm: h.midship! };
+  }
   const cm = h.midship ?? needed;
   const fits = h.midship === undefined ? needed > 0.55 && needed < 0.92 : Math.abs(needed / cm - 1) < 0.15;
   if (!fits) {

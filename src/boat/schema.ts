@@ -164,8 +164,100 @@ export const boatFile = {
     hull: {
       type: 'section',
       missing: 'required',
-      describe: 'Main dimensions of the hull. A round-bilge hull is generated from them.',
+      describe:
+        'The hull: main dimensions, from which a round-bilge hull is generated, or its lines, from which they are measured.',
       keys: {
+        lines: {
+          type: 'section',
+          describe:
+            'Lines plan: stations here, a table of offsets or a mesh in a file beside this one. Everything about the shape is then measured from it.',
+          keys: {
+            stations: {
+              type: 'list',
+              count: [5, 200],
+              describe: 'Stations, half of each section from the keel up.',
+              entry: {
+                type: 'section',
+                describe: 'One station.',
+                keys: {
+                  aft_of_stem: {
+                    type: 'quantity',
+                    kind: 'length',
+                    range: [-5, 35],
+                    missing: 'required',
+                    describe: `Place of the station, ${AFT}.`,
+                  },
+                  heights: {
+                    type: 'list',
+                    count: [2, 200],
+                    missing: 'required',
+                    describe: 'Heights of the points, from the keel up.',
+                    entry: {
+                      type: 'quantity',
+                      kind: 'length',
+                      range: [-10, 10],
+                      describe: 'Height of a point.',
+                    },
+                  },
+                  half_breadths: {
+                    type: 'list',
+                    count: [2, 200],
+                    missing: 'required',
+                    describe: 'Half-breadths at those heights.',
+                    entry: {
+                      type: 'quantity',
+                      kind: 'length',
+                      range: [0, 8],
+                      describe: 'Distance of a point from the centreline.',
+                    },
+                  },
+                },
+              },
+            },
+            table: {
+              type: 'text',
+              longest: 200,
+              describe:
+                'Name of a CSV file beside this one with the columns aft_of_stem, half_breadth and height, one row a point, from the keel up.',
+            },
+            mesh: {
+              type: 'text',
+              longest: 200,
+              describe: 'Name of an OBJ or STL file beside this one: the bare hull as triangles.',
+            },
+            unit: {
+              type: 'choice',
+              choices: ['m', 'cm', 'mm', 'ft', 'in'],
+              missing: { rule: 'm' },
+              describe: 'Unit of the table or mesh.',
+            },
+            forward: {
+              type: 'choice',
+              choices: ['x', '-x', 'y', '-y', 'z', '-z'],
+              missing: { rule: 'x' },
+              describe: 'Axis of the mesh that points forward.',
+            },
+            up: {
+              type: 'choice',
+              choices: ['x', '-x', 'y', '-y', 'z', '-z'],
+              missing: { rule: 'z' },
+              describe: 'Axis of the mesh that points up.',
+            },
+            cuts: {
+              type: 'count',
+              range: [11, 201],
+              missing: { rule: '41' },
+              describe: 'Stations cut through a mesh, closer together at the ends.',
+            },
+            waterline_height: {
+              type: 'quantity',
+              kind: 'length',
+              range: [-10, 10],
+              missing: { rule: '0' },
+              describe: 'Height of the design waterline on the scale of the lines.',
+            },
+          },
+        },
         length_overall: {
           type: 'quantity',
           kind: 'length',
@@ -178,6 +270,7 @@ export const boatFile = {
           kind: 'length',
           range: [1.5, 30],
           missing: 'required',
+          unless: 'lines',
           describe: 'Length of the design waterline, crew aboard and level.',
         },
         beam_overall: {
@@ -192,6 +285,7 @@ export const boatFile = {
           kind: 'length',
           range: [0.3, 8],
           missing: 'required',
+          unless: 'lines',
           describe: 'Greatest beam of the design waterline.',
         },
         canoe_draft: {
@@ -762,13 +856,19 @@ function schemaOf(field: Field): JsonSchema {
       return { description, type: 'string', maxLength: field.longest };
     case 'section': {
       const required = Object.entries(field.keys)
-        .filter(([, f]) => (f as Field).missing === 'required')
+        .filter(([, f]) => (f as Field).missing === 'required' && (f as Field).unless === undefined)
         .map(([key]) => key);
+      const either = Object.entries(field.keys).flatMap(([key, f]) =>
+        (f as Field).unless === undefined
+          ? []
+          : [{ anyOf: [{ required: [key] }, { required: [(f as Field).unless] }] }],
+      );
       return {
         description,
         type: 'object',
         additionalProperties: false,
         ...(required.length > 0 ? { required } : {}),
+        ...(either.length > 0 ? { allOf: either } : {}),
         properties: Object.fromEntries(
           Object.entries(field.keys).map(([key, f]) => [key, schemaOf(f as Field)]),
         ),

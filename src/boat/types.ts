@@ -48,6 +48,8 @@ export interface BoatSpec {
   readonly gravity: number;
   readonly hull: {
     readonly dimensions: MainDimensions;
+    /** Lines as given; left out: generated from the dimensions. */
+    readonly lines?: Lines | undefined;
     readonly loa: number;
     readonly planing: boolean;
     readonly residuary: ResiduaryMethod;

@@ -1,10 +1,24 @@
-import { boatFacts, boatJson, boatText } from '../publish/index.js';
-import { loadBoat } from './boat-input.js';
+import { boatFacts, boatJson, boatText, fileStem, hullPlanPage, writeFiles } from '../publish/index.js';
+import { loadBoat, reportName } from './boat-input.js';
 import { print, printRaw } from './output.js';
 
-/** Reads a boat file and prints what follows from it: quantities, estimates, warnings. */
-export function checkCommand(a: { readonly boat: string; readonly json: boolean }): void {
-  const facts = boatFacts(loadBoat(a.boat));
+export interface CheckArguments {
+  readonly boat: string;
+  readonly json: boolean;
+  /** Folder to write the drawings to; undefined: none are made. */
+  readonly plot: string | undefined;
+}
+
+/** Reads a boat file and prints what follows from it: quantities, estimates, warnings; draws the hull when asked. */
+export function checkCommand(a: CheckArguments): void {
+  const boat = loadBoat(a.boat);
+  const facts = boatFacts(boat);
+  const files =
+    a.plot === undefined
+      ? []
+      : writeFiles(a.plot, [
+          { name: `${fileStem(reportName(a.boat, boat))}-hull.html`, content: hullPlanPage(boat) },
+        ]);
   if (a.json) printRaw(boatJson(facts));
-  else print(boatText(facts));
+  else print([boatText(facts), ...files.map((f) => `\nhull drawings  ${f}`)].join('\n'));
 }

@@ -94,12 +94,22 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
   check: {
     usage: 'check <boat>',
     describe: 'read a boat file; show what follows from it, estimates and warnings',
-    examples: ['polarwright check boats/keelboat.yaml', 'polarwright check mine.yaml --json'],
+    examples: [
+      'polarwright check boats/keelboat.yaml',
+      'polarwright check mine.yaml --plot reports',
+      'polarwright check mine.yaml --json',
+    ],
     positional: BOAT,
-    options: { json: JSON_OPTION },
+    options: {
+      plot: {
+        type: 'string',
+        describe: 'folder to write a page with lines, section areas and righting arms to',
+      },
+      json: JSON_OPTION,
+    },
     run: async (argv) => {
       const { checkCommand } = await import('./check-command.js');
-      checkCommand({ boat: file(argv.boat), json: argv.json === true });
+      checkCommand({ boat: file(argv.boat), json: argv.json === true, plot: text(argv.plot) });
     },
   },
   new: {

@@ -161,7 +161,7 @@ export function linesFromMesh(mesh: Triangles, place: MeshPlacement): FairedLine
   const stations: Station[] = [];
   for (let k = 0; k < place.stations; k++) {
     const w = 0.5 * (1 - Math.cos((Math.PI * k) / (place.stations - 1)));
-    const at = least + length * (5e-4 + (1 - 1e-3) * w) + 1e-9 * length;
+    const at = least + length * (2e-5 + (1 - 4e-5) * w) + 1e-9 * length;
     const pieces: [number, number, number, number][] = [];
     for (let t = 0; t < n; t += 3) {
       const cut: [number, number][] = [];

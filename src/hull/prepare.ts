@@ -278,6 +278,7 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
 
   return {
     form,
+    canoe: body,
     warnings: [...rangeWarnings(form, options, options.planing), ...planingRange.warnings()],
     heelMax: (HEEL_COUNT - 1) * HEEL_STEP,
     rightingArm: (heel) => righting.value(heel),

@@ -115,6 +115,8 @@ export const HULL = {
 /** A hull prepared for many evaluations: it keeps tables, and allocates nothing per call. */
 export interface Hull {
   readonly form: HullForm;
+  /** What the canoe body floats: the load less what a ballasted fin floats of itself, and the centre that leaves. */
+  readonly canoe: HullLoad;
   readonly warnings: readonly RangeWarning[];
   /** Largest heel [rad] the tables cover; beyond it the righting arm goes on from the last slope and is flagged by the caller. */
   readonly heelMax: number;

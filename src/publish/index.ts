@@ -8,6 +8,7 @@ export {
 } from './cautions.js';
 export { csvText, POLAR_COLUMNS, polarCsv } from './csv.js';
 export { polarPage } from './html.js';
+export { hullPlanPage } from './hull-plan.js';
 export { balanceJson, boatJson, polarJson } from './json.js';
 export { type LineChart, lineChartSvg } from './line-chart.js';
 export { decimalsFor, fixed, rounded, significant } from './numbers.js';

@@ -25,6 +25,8 @@ export interface LineChart {
   /** Single marks on the chart. */
   readonly marks?: readonly { readonly x: number; readonly y: number; readonly words: string }[];
   readonly yFrom?: number;
+  /** Same scale along both axes: for drawings. The height follows. */
+  readonly equal?: boolean;
 }
 
 const WIDTH = 560;
@@ -53,9 +55,11 @@ export function lineChartSvg(c: LineChart, id: string): string {
   const x0 = Math.min(0, ...xs);
   const x1 = Math.max(...xs);
   const y0 = c.yFrom ?? Math.min(0, ...ys);
-  const y1 = Math.max(...ys) * 1.04;
+  const most = Math.max(...ys);
+  const y1 = most + 0.04 * Math.max(Math.abs(most), most - y0);
+  const height = c.equal ? TOP + BOTTOM + ((y1 - y0) / (x1 - x0)) * (WIDTH - LEFT - RIGHT) : HEIGHT;
   const px = (v: number): number => LEFT + ((v - x0) / (x1 - x0)) * (WIDTH - LEFT - RIGHT);
-  const py = (v: number): number => HEIGHT - BOTTOM - ((v - y0) / (y1 - y0)) * (HEIGHT - BOTTOM - TOP);
+  const py = (v: number): number => height - BOTTOM - ((v - y0) / (y1 - y0)) * (height - BOTTOM - TOP);
   const n = (v: number): string => fixed(v, 1);
   const parts: string[] = [];
   for (const s of c.shades ?? []) {
@@ -63,18 +67,18 @@ export function lineChartSvg(c: LineChart, id: string): string {
     const b = Math.min(x1, s.to);
     if (b > a) {
       parts.push(
-        `<rect class="chart-shade" x="${n(px(a))}" y="${TOP}" width="${n(px(b) - px(a))}" height="${HEIGHT - TOP - BOTTOM}"><title>${escapeHtml(s.words)}</title></rect>`,
+        `<rect class="chart-shade" x="${n(px(a))}" y="${TOP}" width="${n(px(b) - px(a))}" height="${height - TOP - BOTTOM}"><title>${escapeHtml(s.words)}</title></rect>`,
       );
     }
   }
   const number = (v: number): string => String(Number(v.toPrecision(6)));
   for (const v of axisSteps(x0, x1, 9)) {
     parts.push(
-      `<line class="chart-grid" x1="${n(px(v))}" x2="${n(px(v))}" y1="${TOP}" y2="${HEIGHT - BOTTOM}"/>`,
-      `<text class="chart-text" x="${n(px(v))}" y="${HEIGHT - BOTTOM + 16}" text-anchor="middle">${number(v)}</text>`,
+      `<line class="chart-grid" x1="${n(px(v))}" x2="${n(px(v))}" y1="${TOP}" y2="${height - BOTTOM}"/>`,
+      `<text class="chart-text" x="${n(px(v))}" y="${height - BOTTOM + 16}" text-anchor="middle">${number(v)}</text>`,
     );
   }
-  for (const v of axisSteps(y0, y1, 7)) {
+  for (const v of axisSteps(y0, y1, c.equal ? Math.max(2, Math.round(height / 50)) : 7)) {
     parts.push(
       `<line class="chart-grid" x1="${LEFT}" x2="${WIDTH - RIGHT}" y1="${n(py(v))}" y2="${n(py(v))}"/>`,
       `<text class="chart-text" x="${LEFT - 6}" y="${n(py(v) + 4)}" text-anchor="end">${number(v)}</text>`,
@@ -113,10 +117,10 @@ export function lineChartSvg(c: LineChart, id: string): string {
     )
     .join('');
   return `<figure class="chart"><figcaption>${escapeHtml(c.title)}</figcaption>
-<svg viewBox="0 0 ${WIDTH} ${HEIGHT}" role="img" aria-labelledby="${id}-t ${id}-d"><title id="${id}-t">${escapeHtml(c.title)}</title><desc id="${id}-d">${escapeHtml(c.description)}</desc>
+<svg viewBox="0 0 ${WIDTH} ${height}" role="img" aria-labelledby="${id}-t ${id}-d"><title id="${id}-t">${escapeHtml(c.title)}</title><desc id="${id}-d">${escapeHtml(c.description)}</desc>
 ${parts.join('\n')}
 <line class="chart-axis" x1="${LEFT}" x2="${WIDTH - RIGHT}" y1="${n(py(Math.max(y0, Math.min(0, y1))))}" y2="${n(py(Math.max(y0, Math.min(0, y1))))}"/>
-<text class="chart-text" x="${(LEFT + WIDTH - RIGHT) / 2}" y="${HEIGHT - 8}" text-anchor="middle">${escapeHtml(c.xLabel)}</text>
-<text class="chart-text" transform="translate(14 ${(HEIGHT - BOTTOM + TOP) / 2}) rotate(-90)" text-anchor="middle">${escapeHtml(c.yLabel)}</text>
+<text class="chart-text" x="${(LEFT + WIDTH - RIGHT) / 2}" y="${height - 8}" text-anchor="middle">${escapeHtml(c.xLabel)}</text>
+<text class="chart-text" transform="translate(14 ${(height - BOTTOM + TOP) / 2}) rotate(-90)" text-anchor="middle">${escapeHtml(c.yLabel)}</text>
 </svg><ul class="chart-legend">${legend}</ul></figure>`;
 }
