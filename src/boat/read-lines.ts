@@ -9,7 +9,7 @@ import {
   readStl,
 } from '../hull/index.js';
 import { KINDS } from '../units/index.js';
-import { BesideError, type ReadBeside } from './beside.js';
+import { BesideError, partsBeside, type ReadBeside } from './beside.js';
 import type { BoatFileValue } from './schema.js';
 
 type Complain = (path: readonly string[], what: string, hint: string) => void;
@@ -63,6 +63,7 @@ export function readLines(
     complain([...path, 'unit'], 'stations in the boat file carry their own units', 'remove it');
   const name = way === 'stations' ? '' : given[way]!;
   try {
+    if (way !== 'stations') partsBeside(name);
     const lines = linesOf(given, way, beside);
     const { dimensions, foreEnd } = lines;
     if (way !== 'mesh' && Math.abs(foreEnd) > FORE_END * dimensions.lwl) {

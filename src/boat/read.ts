@@ -332,6 +332,17 @@ function readHull(
   const loa = est.pick(['hull', 'length_overall'], h.length_overall, () => 1.1 * lwl);
   const beamMax = est.pick(['hull', 'beam_overall'], h.beam_overall, () => 1.3 * bwl);
   const freeboard = est.pick(['hull', 'freeboard'], h.freeboard, () => 0.1 * lwl);
+  if (h.lines !== undefined) {
+    const lines = h.prismatic! * h.midship! * lwl * bwl * h.canoe_draft!;
+    if (!(Math.abs(volume / lines - 1) < LINES_MISFIT)) {
+      complain(
+        ['hull', 'lines'],
+        `up to their waterline the lines displace ${say(lines)} m3, but weights and crew need ${say(volume)} m3`,
+        'check unit and waterline_height of the lines, and the masses',
+      );
+      return undefined;
+    }
+  }
   if (loa < lwl) {
     complain(
       ['hull', 'length_overall'],
@@ -380,17 +391,7 @@ function readHull(
   }
   // With the draft given, the midship coefficient follows from the displacement; given too, the three must agree.
   const needed = volume / (cp * lwl * bwl * given);
-  if (h.lines !== undefined) {
-    if (!(Math.abs(needed / h.midship! - 1) < LINES_MISFIT)) {
-      complain(
-        ['hull', 'lines'],
-        `up to their waterline the lines displace ${say((volume * h.midship!) / needed)} m3, but weights and crew need ${say(volume)} m3`,
-        'check unit and waterline_height of the lines, and the masses',
-      );
-      return undefined;
-    }
-    return { loa, beamMax, freeboard, canoeDraft: given, cp, cm: h.midship! };
-  }
+  if (h.lines !== undefined) return { loa, beamMax, freeboard, canoeDraft: given, cp, cm: h.midship! };
   const cm = h.midship ?? needed;
   const fits = h.midship === undefined ? needed > 0.55 && needed < 0.92 : Math.abs(needed / cm - 1) < 0.15;
   if (!fits) {

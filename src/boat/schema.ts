@@ -165,8 +165,84 @@ export const boatFile = {
       type: 'section',
       missing: 'required',
       describe:
-        'The hull: main dimensions, from which a round-bilge hull is generated, or its lines, from which they are measured.',
+        'Main dimensions of the hull, from which a round-bilge hull is generated, or its lines, from which they are measured.',
       keys: {
+        length_overall: {
+          type: 'quantity',
+          kind: 'length',
+          range: [1.5, 30],
+          missing: { rule: '1.1 times the waterline length (judgement)' },
+          describe: 'Length of the hull overall.',
+        },
+        waterline_length: {
+          type: 'quantity',
+          kind: 'length',
+          range: [1.5, 30],
+          missing: 'required',
+          unless: 'lines',
+          describe: 'Length of the design waterline, crew aboard and level.',
+        },
+        beam_overall: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.3, 8],
+          missing: { rule: '1.3 times the waterline beam (judgement)' },
+          describe: 'Greatest beam of the hull, at the sheer.',
+        },
+        waterline_beam: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.3, 8],
+          missing: 'required',
+          unless: 'lines',
+          describe: 'Greatest beam of the design waterline.',
+        },
+        canoe_draft: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.03, 2],
+          missing: {
+            rule: 'from the displacement: volume / (Cp Cm Lwl Bwl), exact for the coefficients used',
+          },
+          describe: 'Depth of the hull below the waterline without keel, board or rudder.',
+        },
+        freeboard: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.05, 3],
+          missing: { rule: '0.10 of the waterline length (judgement)' },
+          describe: 'Height of the side amidships above the waterline.',
+        },
+        prismatic: {
+          type: 'quantity',
+          kind: 'ratio',
+          range: [0.45, 0.75],
+          missing: { rule: '0.56, the middle of the Delft series (0.52 to 0.60)' },
+          describe: 'Prismatic coefficient Cp of the hull without foils.',
+        },
+        midship: {
+          type: 'quantity',
+          kind: 'ratio',
+          range: [0.5, 0.95],
+          missing: { rule: '0.72, the middle of the Delft series (0.65 to 0.78)' },
+          describe: 'Midship coefficient Cm: fullness of the largest section.',
+        },
+        waterplane: {
+          type: 'quantity',
+          kind: 'ratio',
+          range: [0.55, 0.9],
+          missing: { rule: '0.70 for a hull that planes, 0.68 otherwise (judgement)' },
+          describe: 'Waterplane coefficient Cwp: area of the waterline over length times beam.',
+        },
+        buoyancy_aft_of_stem: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.5, 20],
+          missing: {
+            rule: 'under the common centre of weights and crew, so that the boat floats level, kept within 0 to 6 % of the waterline length abaft amidships',
+          },
+          describe: `Centre of buoyancy of the hull, ${AFT}.`,
+        },
         lines: {
           type: 'section',
           describe:
@@ -257,82 +333,6 @@ export const boatFile = {
               describe: 'Height of the design waterline on the scale of the lines.',
             },
           },
-        },
-        length_overall: {
-          type: 'quantity',
-          kind: 'length',
-          range: [1.5, 30],
-          missing: { rule: '1.1 times the waterline length (judgement)' },
-          describe: 'Length of the hull overall.',
-        },
-        waterline_length: {
-          type: 'quantity',
-          kind: 'length',
-          range: [1.5, 30],
-          missing: 'required',
-          unless: 'lines',
-          describe: 'Length of the design waterline, crew aboard and level.',
-        },
-        beam_overall: {
-          type: 'quantity',
-          kind: 'length',
-          range: [0.3, 8],
-          missing: { rule: '1.3 times the waterline beam (judgement)' },
-          describe: 'Greatest beam of the hull, at the sheer.',
-        },
-        waterline_beam: {
-          type: 'quantity',
-          kind: 'length',
-          range: [0.3, 8],
-          missing: 'required',
-          unless: 'lines',
-          describe: 'Greatest beam of the design waterline.',
-        },
-        canoe_draft: {
-          type: 'quantity',
-          kind: 'length',
-          range: [0.03, 2],
-          missing: {
-            rule: 'from the displacement: volume / (Cp Cm Lwl Bwl), exact for the coefficients used',
-          },
-          describe: 'Depth of the hull below the waterline without keel, board or rudder.',
-        },
-        freeboard: {
-          type: 'quantity',
-          kind: 'length',
-          range: [0.05, 3],
-          missing: { rule: '0.10 of the waterline length (judgement)' },
-          describe: 'Height of the side amidships above the waterline.',
-        },
-        prismatic: {
-          type: 'quantity',
-          kind: 'ratio',
-          range: [0.45, 0.75],
-          missing: { rule: '0.56, the middle of the Delft series (0.52 to 0.60)' },
-          describe: 'Prismatic coefficient Cp of the hull without foils.',
-        },
-        midship: {
-          type: 'quantity',
-          kind: 'ratio',
-          range: [0.5, 0.95],
-          missing: { rule: '0.72, the middle of the Delft series (0.65 to 0.78)' },
-          describe: 'Midship coefficient Cm: fullness of the largest section.',
-        },
-        waterplane: {
-          type: 'quantity',
-          kind: 'ratio',
-          range: [0.55, 0.9],
-          missing: { rule: '0.70 for a hull that planes, 0.68 otherwise (judgement)' },
-          describe: 'Waterplane coefficient Cwp: area of the waterline over length times beam.',
-        },
-        buoyancy_aft_of_stem: {
-          type: 'quantity',
-          kind: 'length',
-          range: [0.5, 20],
-          missing: {
-            rule: 'under the common centre of weights and crew, so that the boat floats level, kept within 0 to 6 % of the waterline length abaft amidships',
-          },
-          describe: `Centre of buoyancy of the hull, ${AFT}.`,
         },
         planes: {
           type: 'yes-no',
@@ -861,7 +861,11 @@ function schemaOf(field: Field): JsonSchema {
       const either = Object.entries(field.keys).flatMap(([key, f]) =>
         (f as Field).unless === undefined
           ? []
-          : [{ anyOf: [{ required: [key] }, { required: [(f as Field).unless] }] }],
+          : [
+              {
+                anyOf: [key, (f as Field).unless!].map((k) => ({ required: [k], properties: { [k]: true } })),
+              },
+            ],
       );
       return {
         description,

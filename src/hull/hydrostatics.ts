@@ -343,10 +343,14 @@ function cornerShare(a: number, b: number, c: number): number {
   return (a / (a - b)) * (a / (a - c));
 }
 
-/** The same hull with every half section drawn with k points evenly along its girth; unchanged if counts agree. */
-export function resampled(lines: Lines, k = 33): Lines {
+/**
+ * The same hull with every half section drawn with equally many points evenly along its girth: as many as its most
+ * detailed section has, within 33 to 97. Unchanged if counts agree already.
+ */
+export function resampled(lines: Lines): Lines {
   const first = lines.stations[0]!.y.length;
-  if (lines.stations.every((s) => s.y.length === first)) return lines;
+  if (first <= 97 && lines.stations.every((s) => s.y.length === first)) return lines;
+  const k = Math.min(97, Math.max(33, ...lines.stations.map((s) => s.y.length)));
   return {
     stations: lines.stations.map((s) => {
       const along = [0];

@@ -1,12 +1,16 @@
+import { readFileSync } from 'node:fs';
+import { type Boat, readBoat, rightingArms } from '../../src/boat/index.js';
 import {
   floatAt,
   immerse,
   type Lines,
   prepareLines,
   rightingArmOf,
+  rightingCurve,
   type Station,
   wettedArea,
 } from '../../src/hull/index.js';
+import { asObj, asOffsets, withLines } from '../support/lines.js';
 import { absolute, type OutsideCheck, relative } from './check.js';
 
 const DEG = Math.PI / 180;
@@ -75,6 +79,61 @@ export const checks: readonly OutsideCheck[] = [
       ].map(([d, gz]) => {
         const { immersed } = floatAt(p, load, d! * DEG);
         return absolute(`${d} deg`, gz!, rightingArmOf(immersed, d! * DEG, load.z));
+      });
+    },
+  },
+  {
+    source: 'exact: symmetry of a box about half depth; sides and bottom change places at 90 deg',
+    quantity: 'righting arm of a half-sunk square box about its middle, 30 to 180 deg',
+    tolerance: 1e-6,
+    errorUnit: 'm',
+    run: () => {
+      // Side 2, immersed to half: about its middle the arm is that of the wall-sided formula up to 45 deg, and repeats
+      // every 90 deg.
+      const lines = prism(10, [0, 1, 1, 0], [-1, -1, 1, 1]);
+      const load = { mass: 20 * 1000, x: 0, z: 0 };
+      const arm = (d: number): number => {
+        const t = ((d + 45) % 90) - 45;
+        const tan = Math.tan(t * DEG);
+        // Centre of buoyancy of the half square cut at slope tan: (tan/3, -1/2 + tan^2/6).
+        return (tan / 3) * Math.cos(t * DEG) + (-0.5 + (tan * tan) / 6) * Math.sin(t * DEG);
+      };
+      const heels = [30, 60, 100, 135.5, 180];
+      const got = rightingCurve(
+        lines,
+        load,
+        1000,
+        heels.map((d) => d * DEG),
+      );
+      return heels.map((d, i) => absolute(`${d} deg`, arm(d), got[i]!.arm));
+    },
+  },
+  {
+    source: 'the same hull by three ways in: main dimensions, offsets, mesh',
+    quantity: 'volume, Cp, LCB, righting arm at 30 and 60 deg of the demo keelboat',
+    tolerance: 0.005,
+    errorUnit: 'relative',
+    note: 'the mesh is cut at 41 stations of its own',
+    run: () => {
+      const text = readFileSync('boats/keelboat.yaml', 'utf8');
+      const whole = readBoat(text, 'keelboat.yaml');
+      const files: Record<string, string> = {
+        'hull.csv': asOffsets(whole.lines, whole.spec.hull.dimensions.lwl),
+        'hull.obj': asObj(whole.lines),
+      };
+      const heels = [30 * DEG, 60 * DEG];
+      const of = (b: Boat): number[] => {
+        const { form } = b.hull;
+        const arms = rightingArms(b, heels).map((a) => a.inboard);
+        return [form.volume, form.cp, form.lcbFromForward / form.lwl, ...arms];
+      };
+      const names = ['volume', 'Cp', 'LCB', 'GZ 30', 'GZ 60'];
+      const expected = of(whole);
+      return ['table: hull.csv', 'mesh: hull.obj'].flatMap((lines) => {
+        const b = readBoat(withLines(text, lines), 'keelboat.yaml', undefined, (name) =>
+          new TextEncoder().encode(files[name]),
+        );
+        return of(b).map((v, i) => relative(`${names[i]}, ${lines.split(':')[0]}`, expected[i]!, v));
       });
     },
   },
