@@ -88,7 +88,6 @@ export function assembleBoat(input: { spec: BoatSpec; estimates?: readonly Estim
     canoeDraft: hull.form.canoeDraft,
     sidewaysVolume: hull.form.sidewaysVolume,
     water: spec.water,
-    hoistRange: spec.boardRange,
   });
   const windage = windageOf(spec);
   const byName = new Map(spec.sails.map((s) => [s.name, s]));
@@ -126,11 +125,20 @@ export function assembleBoat(input: { spec: BoatSpec; estimates?: readonly Estim
 /** Volume of the fin and the depth of its centre: that of the ballast, or of the planform without ballast. */
 function keelOf(spec: BoatSpec): NonNullable<HullOptions['keel']> {
   const { keel } = spec;
-  const [r, t] = [keel.rootChord, keel.tipChord];
+  const n = keel.chords.length - 1;
+  // Centre of the planform's area below the root.
+  let area = 0;
+  let moment = 0;
+  for (let i = 0; i < n; i++) {
+    const [a, b] = [keel.chords[i]!, keel.chords[i + 1]!];
+    area += 0.5 * (a + b);
+    moment += 0.5 * (a + b) * i + (a + 2 * b) / 6;
+  }
+  const middle = -keel.z + (keel.span * moment) / (area * n);
   const ballast = spec.weights.find((w) => w.name === 'ballast');
-  const middle = -keel.z + (keel.span * (r + 2 * t)) / (3 * (r + t));
   const depth = ballast !== undefined && ballast.z < keel.z ? -ballast.z : middle;
   // Volume sits a little abaft the quarter chord, at about 40 % of the chord.
-  const x = keel.x - 0.5 * keel.span * Math.tan(keel.sweep) - 0.15 * 0.5 * (keel.rootChord + keel.tipChord);
+  const chord = area / n;
+  const x = keel.x - 0.5 * keel.span * Math.tan(keel.sweep) - 0.15 * chord;
   return { volume: spec.keelVolume, centreDepth: depth, draft: keel.span - keel.z, x };
 }

@@ -1,5 +1,5 @@
 import { air, OPEN_WATER_ROUGHNESS, water } from '../environment/index.js';
-import type { FoilSpec } from '../foils/index.js';
+import { bulbVolume, chordMeans, type FoilSpec } from '../foils/index.js';
 import type { FairedLines, MainDimensions } from '../hull/index.js';
 import type { SailShape } from '../sails/index.js';
 import { DEGREE, nearest, STANDARD_GRAVITY, type UnitEngine } from '../units/index.js';
@@ -131,7 +131,9 @@ function buildSpec(
     }
   }
 
-  const keelTip = est.pick([...keelPath, 'tip_chord'], keelFile.tip_chord, () => 0.6 * keelFile.root_chord);
+  const keelChords = readChords(keelPath, keelFile, est, complain);
+  const rudderChords = readChords(['foils', 'rudder'], file.foils.rudder, est, complain);
+  if (keelChords === undefined || rudderChords === undefined) return undefined;
   const keelThickness = est.pick([...keelPath, 'thickness'], keelFile.thickness, () =>
     fin !== undefined ? 0.12 : 0.08,
   );
@@ -139,9 +141,9 @@ function buildSpec(
   if (fin !== undefined) {
     keelVolume = est.pick(['foils', 'keel', 'volume'], fin.volume, () => {
       if (ballast !== undefined) return ballast.mass / CAST_IRON;
-      const [r, t] = [keelFile.root_chord, keelTip];
       const span = keelFile.span ?? keelFile.draft ?? 0;
-      return (0.68 * keelThickness * span * (r * r + r * t + t * t)) / 3;
+      const bulb = fin.bulb === undefined ? 0 : bulbVolume(fin.bulb);
+      return 0.68 * keelThickness * span * chordMeans(keelChords).square + bulb;
     });
   }
   const volume = mass / fluid.density - keelVolume;
@@ -159,7 +161,7 @@ function buildSpec(
 
   const keel = readFoil(keelPath, keelFile, est, complain, x, {
     kind: fin !== undefined ? 'keel' : 'centreboard',
-    tipChord: keelTip,
+    chords: keelChords,
     thickness: keelThickness,
     rootDepth: () => canoeDraft,
     clMax: 1.2,
@@ -172,11 +174,7 @@ function buildSpec(
   );
   const rudder = readFoil(['foils', 'rudder'], rudderFile, est, complain, x, {
     kind: 'rudder',
-    tipChord: est.pick(
-      ['foils', 'rudder', 'tip_chord'],
-      rudderFile.tip_chord,
-      () => 0.6 * rudderFile.root_chord,
-    ),
+    chords: rudderChords,
     thickness: est.pick(['foils', 'rudder', 'thickness'], rudderFile.thickness, () => 0.1),
     rootDepth: () => (hung === 'transom' ? 0 : 0.5 * canoeDraft),
     clMax: hung === 'transom' ? 0.85 : 1.2,
@@ -184,7 +182,7 @@ function buildSpec(
     straightTrailingEdge: true,
   });
   if (keel === undefined || rudder === undefined) return undefined;
-  checkFoils(file, keelPath, complain);
+  checkFoils(file, keelPath, keelChords[0]!, complain);
   const raised = board === undefined ? 1 : est.pick([...keelPath, 'raises_to'], board.raises_to, () => 0.3);
 
   const rigAndSails = readRig(file, est, complain, x, freeboard);
@@ -429,7 +427,7 @@ function readMeasured(file: BoatFileValue, complain: Complain): BoatSpec['hull']
 
 interface FoilDefaults {
   readonly kind: FoilSpec['kind'];
-  readonly tipChord: number;
+  readonly chords: readonly number[];
   readonly thickness: number;
   readonly rootDepth: () => number;
   readonly clMax: number;
@@ -437,7 +435,42 @@ interface FoilDefaults {
   readonly straightTrailingEdge: boolean;
 }
 
-type FoilFile = BoatFileValue['foils']['rudder'] | NonNullable<BoatFileValue['foils']['keel']>;
+type FoilFile =
+  | BoatFileValue['foils']['rudder']
+  | NonNullable<BoatFileValue['foils']['keel']>
+  | NonNullable<BoatFileValue['foils']['centreboard']>;
+
+/** Chords from root to tip: as listed, or the root's and the tip's. */
+function readChords(
+  path: Path,
+  f: FoilFile,
+  est: Estimator,
+  complain: Complain,
+): readonly number[] | undefined {
+  if (f.chords !== undefined) {
+    for (const key of ['root_chord', 'tip_chord'] as const) {
+      if (f[key] === undefined) continue;
+      complain([...path, key], 'the chords are listed as well', 'give the list, or root and tip');
+      return undefined;
+    }
+    return f.chords;
+  }
+  const root = f.root_chord;
+  const tip = est.pick([...path, 'tip_chord'], f.tip_chord, () => 0.6 * root);
+  if (tip > 3 * root) {
+    complain(
+      [...path, 'tip_chord'],
+      `the tip (${say(tip)} m) is more than three times the root (${say(root)} m)`,
+      'are root_chord and tip_chord swapped?',
+    );
+  }
+  return [root, tip];
+}
+
+function twinOf(t: BoatFileValue['foils']['rudder']['twin']): FoilSpec['twin'] {
+  if (t === undefined) return undefined;
+  return { offset: 0.5 * t.apart, cant: t.cant ?? 0, lowered: t.lowered ?? 'both' };
+}
 
 function readFoil(
   path: Path,
@@ -457,45 +490,42 @@ function readFoil(
     );
     return undefined;
   }
-  if (d.tipChord > 3 * f.root_chord) {
-    complain(
-      [...path, 'tip_chord'],
-      `the tip (${say(d.tipChord)} m) is more than three times the root (${say(f.root_chord)} m)`,
-      'are root_chord and tip_chord swapped?',
-    );
-  }
+  const root = d.chords[0]!;
+  const tip = d.chords[d.chords.length - 1]!;
   const sweep = est.pick([...path, 'sweep'], f.sweep, () =>
-    d.straightTrailingEdge ? Math.atan((0.75 * (f.root_chord - d.tipChord)) / span) : 0,
+    d.straightTrailingEdge ? Math.atan((0.75 * (root - tip)) / span) : 0,
   );
   return {
     kind: d.kind,
     span,
-    rootChord: f.root_chord,
-    tipChord: d.tipChord,
+    chords: d.chords,
     sweep,
+    swung: 'kicked_up' in f ? f.kicked_up : undefined,
+    twin: 'twin' in f ? twinOf(f.twin) : undefined,
+    bulb: 'bulb' in f ? f.bulb : undefined,
     thickness: d.thickness,
-    x: x(f.aft_of_stem + 0.25 * f.root_chord),
+    x: x(f.aft_of_stem + 0.25 * root),
     z: depth === 0 ? 0 : -depth,
     surfacePiercing: d.surfacePiercing,
     clMax: est.pick([...path, 'lift_limit'], f.lift_limit, () => d.clMax),
   };
 }
 
-function checkFoils(file: BoatFileValue, keelPath: Path, complain: Complain): void {
+function checkFoils(file: BoatFileValue, keelPath: Path, chord: number, complain: Complain): void {
   const lwl = file.hull.waterline_length;
   const keel = (file.foils.keel ?? file.foils.centreboard)!;
   const rudder = file.foils.rudder;
-  if (keel.aft_of_stem < 0.1 * lwl || keel.aft_of_stem + keel.root_chord > 0.95 * lwl) {
+  if (keel.aft_of_stem < 0.1 * lwl || keel.aft_of_stem + chord > 0.95 * lwl) {
     complain(
       [...keelPath, 'aft_of_stem'],
-      `the ${keelPath[1]} reaches from ${say(keel.aft_of_stem)} m to ${say(keel.aft_of_stem + keel.root_chord)} m aft of the stem, outside 10 to 95 % of the waterline (${say(lwl)} m)`,
+      `the ${keelPath[1]} reaches from ${say(keel.aft_of_stem)} m to ${say(keel.aft_of_stem + chord)} m aft of the stem, outside 10 to 95 % of the waterline (${say(lwl)} m)`,
       'it is the leading edge, measured from the fore end of the waterline',
     );
   }
-  if (rudder.aft_of_stem < keel.aft_of_stem + keel.root_chord) {
+  if (rudder.aft_of_stem < keel.aft_of_stem + chord) {
     complain(
       ['foils', 'rudder', 'aft_of_stem'],
-      `the rudder (${say(rudder.aft_of_stem)} m aft of the stem) is not behind the ${keelPath[1]} (which ends at ${say(keel.aft_of_stem + keel.root_chord)} m)`,
+      `the rudder (${say(rudder.aft_of_stem)} m aft of the stem) is not behind the ${keelPath[1]} (which ends at ${say(keel.aft_of_stem + chord)} m)`,
       'are the two swapped?',
     );
   } else if (rudder.aft_of_stem > 1.2 * lwl) {
@@ -704,7 +734,7 @@ function readWeights(
 ): WeightItem[] {
   const lwl = file.hull.waterline_length;
   const { keel } = b;
-  const keelMiddle = keel.x - 0.25 * keel.rootChord - 0.5 * keel.span * Math.tan(keel.sweep);
+  const keelMiddle = keel.x - 0.25 * keel.chords[0]! - 0.5 * keel.span * Math.tan(keel.sweep);
   return Object.entries(file.weights).map(([name, part]) => {
     const path: Path = ['weights', name];
     const aft = est.pick([...path, 'aft_of_stem'], part.aft_of_stem, () =>

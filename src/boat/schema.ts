@@ -22,7 +22,15 @@ const foilKeys = {
     kind: 'length',
     range: [0.05, 5],
     missing: 'required',
+    unless: 'chords',
     describe: 'Chord of the foil where it leaves the hull.',
+  },
+  chords: {
+    type: 'list',
+    count: [2, 40],
+    describe:
+      'Chords at even steps from root to tip, straight between them: any planform. Instead of root_chord and tip_chord.',
+    entry: { type: 'quantity', kind: 'length', range: [0.005, 5], describe: 'One chord.' },
   },
   tip_chord: {
     type: 'quantity',
@@ -82,6 +90,41 @@ const rootDepth = (rule: string) =>
     missing: { rule },
     describe: 'Depth below the waterline at which the foil leaves the hull.',
   }) as const satisfies Field;
+
+const kickedUp = {
+  type: 'quantity',
+  kind: 'angle',
+  range: [0, 60],
+  missing: { rule: '0: fully down' },
+  describe: 'Angle by which the blade is swung aft about its root, its span measured along the blade.',
+} as const satisfies Field;
+
+const twin = {
+  type: 'section',
+  describe: 'Two blades side by side instead of one on the centreline. The other keys describe one of them.',
+  keys: {
+    apart: {
+      type: 'quantity',
+      kind: 'length',
+      range: [0.1, 6],
+      missing: 'required',
+      describe: 'Distance between the two where they leave the hull.',
+    },
+    cant: {
+      type: 'quantity',
+      kind: 'angle',
+      range: [0, 40],
+      missing: { rule: '0: upright' },
+      describe: 'Lean of each blade from upright, its tip outwards.',
+    },
+    lowered: {
+      type: 'choice',
+      choices: ['both', 'leeward'],
+      missing: { rule: 'both' },
+      describe: 'Which of them are down while sailing.',
+    },
+  },
+} as const satisfies Field;
 
 const keelKeys = {
   ...foilKeys,
@@ -529,6 +572,27 @@ export const boatFile = {
               },
               describe: 'Volume of fin and bulb.',
             },
+            bulb: {
+              type: 'section',
+              describe:
+                'A streamlined body at the tip of the fin. Its drag is counted; its end-plate effect is not.',
+              keys: {
+                length: {
+                  type: 'quantity',
+                  kind: 'length',
+                  range: [0.1, 6],
+                  missing: 'required',
+                  describe: 'Length of the bulb.',
+                },
+                diameter: {
+                  type: 'quantity',
+                  kind: 'length',
+                  range: [0.02, 1.5],
+                  missing: 'required',
+                  describe: 'Its greatest diameter; the mean of width and height where it is not round.',
+                },
+              },
+            },
           },
         },
         centreboard: {
@@ -541,8 +605,11 @@ export const boatFile = {
               kind: 'ratio',
               range: [0.25, 1],
               missing: { rule: '0.3: three tenths of the board stays down (judgement)' },
-              describe: 'Smallest share of the board left below the hull while sailing.',
+              describe:
+                'Smallest share of the board left below the hull while sailing; the crew choose between this and all of it.',
             },
+            kicked_up: kickedUp,
+            twin,
           },
         },
         rudder: {
@@ -561,6 +628,8 @@ export const boatFile = {
               describe: 'On the transom, cutting the surface, or under the hull.',
             },
             lift_limit: liftLimit('1.2 under the hull, 0.85 on the transom, where it draws air (judgement)'),
+            kicked_up: kickedUp,
+            twin,
             root_depth: rootDepth('0 on the transom, half the canoe draft under the hull (judgement)'),
           },
         },

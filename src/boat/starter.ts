@@ -72,6 +72,9 @@ export function starterBoat(kind: StarterKind): string {
   return `${out.join('\n')}\n`;
 }
 
+/** Sections of which a boat has one. */
+const INSTEAD: Readonly<Record<string, string>> = { keel: 'centreboard', centreboard: 'keel' };
+
 const WIDTH = 108;
 
 function writeSection(
@@ -85,8 +88,8 @@ function writeSection(
     const value = values[key];
     if (depth === 0 && value !== undefined) out.push('');
     if (value === undefined) {
-      // A whole section that is absent is listed only where nothing else stands for it.
-      if (inner.type === 'section' && depth > 0) continue;
+      // A section that another stands for is not listed: a keel where there is a board.
+      if (INSTEAD[key] !== undefined && values[INSTEAD[key]] !== undefined) continue;
       if (depth === 0) out.push('');
       comment(explain(inner), pad, out);
       if (inner.type === 'section') {

@@ -8,7 +8,10 @@ import {
   polarPage,
   polarReport,
   resistanceCsv,
+  TEXT_WIDTH,
   targetTable,
+  warningText,
+  wrapped,
   writeFiles,
 } from '../publish/index.js';
 import { fromKnots, radians } from '../units/index.js';
@@ -56,5 +59,16 @@ export function polarCommand(a: PolarArguments): void {
   if (a.quiet) return;
   const what = ['polar table', 'resistance', 'results', 'page'];
   const places = files.map((f, i) => `${what[i]!.padEnd(11)}  ${join(f)}`);
-  print([targetTable(report, decimals), '', cautionText(), '', ...places].join('\n'));
+  const { warnings } = report.boat;
+  const beyond = warnings.map((w) => wrapped(`- ${warningText(w)}`, TEXT_WIDTH, '  '));
+  print(
+    [
+      targetTable(report, decimals),
+      ...(beyond.length > 0 ? ['', 'Outside the range of a method', ...beyond] : []),
+      '',
+      cautionText(),
+      '',
+      ...places,
+    ].join('\n'),
+  );
 }

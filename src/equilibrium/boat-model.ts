@@ -72,7 +72,6 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
     sums,
   };
   const flow = { tws: 0, twa: 0, speed: 0, leeway: 0 };
-  const hoist = spec.boardRange[1];
 
   const lower = new Float64Array(X.count);
   const upper = new Float64Array(X.count);
@@ -86,6 +85,9 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
   limit(X.rudder, -spec.limits.rudder, spec.limits.rudder);
   limit(X.depower, 0, DEPOWER_MAX);
   limit(X.arm, spec.crew.armLee, spec.crew.armOut);
+
+  limit(X.hoist, spec.boardRange[0], spec.boardRange[1]);
+  const hoists = spec.boardRange[0] < spec.boardRange[1];
 
   const heelLimit = upper[X.heel]!;
   const prepare = (_tws: number, twa: number): void => {
@@ -134,7 +136,7 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
   };
 
   const evaluateWater = (x: Float64Array): void => {
-    foils.evaluateInto(x[X.speed]!, x[X.leeway]!, x[X.rudder]!, x[X.heel]!, hoist, water);
+    foils.evaluateInto(x[X.speed]!, x[X.leeway]!, x[X.rudder]!, x[X.heel]!, x[X.hoist]!, water);
     hull.resistanceInto(x[X.speed]!, x[X.heel]!, hullParts);
   };
 
@@ -187,7 +189,7 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
   const water0 = new Float64Array(FOIL.count);
   const hull0 = new Float64Array(HULL.count);
 
-  /** Differences by parts: the air does not depend on rudder and arm, the water not on depower and arm. */
+  /** Differences by parts: the air does not depend on rudder, arm and board, the water not on depower and arm. */
   const jacobianInto = (
     tws: number,
     twa: number,
@@ -205,9 +207,10 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
       const size = j === X.speed ? Math.max(Math.abs(x[j]!), 0.02 * model.speedScale) : 1;
       let h = 1e-6 * size;
       if (j === X.depower && x[j]! + h > DEPOWER_MAX) h = -h;
+      if (j === X.hoist && x[j]! + h > upper[j]!) h = -h;
       xw[j] = x[j]! + h;
-      const inAir = j !== X.rudder && j !== X.arm;
-      const inWater = j !== X.depower && j !== X.arm;
+      const inAir = j !== X.rudder && j !== X.arm && j !== X.hoist;
+      const inWater = j !== X.depower && j !== X.arm && (j !== X.hoist || hoists);
       if (inAir) nearAir(tws, twa, xw);
       if (inWater) evaluateWater(xw);
       add(xw, c1);

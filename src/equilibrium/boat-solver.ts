@@ -77,6 +77,7 @@ export function describeState(set: SetSolver, tws: number, twa: number, s: Solut
     depower: x[X.depower]!,
     crewArm: arm,
     crewShare: arm >= 0 ? arm / Math.max(1e-9, upper[X.arm]!) : -arm / Math.min(-1e-9, lower[X.arm]!),
+    boardDown: x[X.hoist]!,
     sailSet: sailSet.name,
     regime: regimeOf(model, x, ease),
     residual: s.residual,
@@ -106,6 +107,7 @@ export function stateVector(s: SailingState): Float64Array {
   x[X.rudder] = s.rudder;
   x[X.depower] = s.depower;
   x[X.arm] = s.crewArm;
+  x[X.hoist] = s.boardDown;
   return x;
 }
 

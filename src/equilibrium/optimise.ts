@@ -5,8 +5,9 @@ import { type ForceModel, RES, X } from './types.js';
 /**
  * The fastest balanced state at one wind speed and angle, by sequential quadratic programming.
  *
- * Unknowns x = (speed, leeway, heel, rudder, depower, arm); four balances c(x) = 0; heel and depower are the
- * free controls p, the other four, s, follow from the balances. Each step linearises c,
+ * Unknowns x = (speed, leeway, heel, rudder, depower, arm, hoist); four balances c(x) = 0; heel and depower are the
+ * free controls p, four others, s, follow from the balances. How much of a board is down, where that can be chosen,
+ * moves beside them by Newton steps of its own on the reduced gradient. Each step linearises c,
  *
  *   ds = -Js^-1 c - Js^-1 Jp dp,
  *
@@ -44,6 +45,8 @@ const BASIC = [X.speed, X.leeway, X.rudder, X.arm] as const;
 const TIE = 1e-6;
 const RESIDUAL_TOLERANCE = 1e-10;
 const MAX_ITERATIONS = 40;
+/** First guess of the curvature of speed over the share of a board that is down, as a share of speed. */
+const HOIST_CURVATURE = 0.3;
 /** Gain in speed, as a share, below which a corner of the model may end the search. */
 const CORNER_GAIN = 2e-5;
 
@@ -62,7 +65,7 @@ export function finiteDifferenceJacobian(
   for (let j = 0; j < X.count; j++) {
     const size = j === X.speed ? Math.max(Math.abs(x[j]!), 0.02 * model.speedScale) : 1;
     let h = 1e-6 * size;
-    if (j === X.depower && x[j]! + h >= 1) h = -h;
+    if ((j === X.depower || j === X.hoist) && x[j]! + h >= 1) h = -h;
     work.x[j] = x[j]! + h;
     model.residualInto(tws, twa, work.x, work.c);
     for (let i = 0; i < RES.count; i++) jacobian[i * X.count + j] = (work.c[i]! - base[i]!) / h;
@@ -89,8 +92,11 @@ export function createOptimiser(model: ForceModel): Optimiser {
   const lu = new Float64Array(16);
   const pivots = new Int32Array(4);
   const ds0 = new Float64Array(4);
+  const ds1 = new Float64Array(4); // with the board's step
   const th = new Float64Array(4); // d s / d heel
   const td = new Float64Array(4); // d s / d depower
+  const tb = new Float64Array(4); // d s / d hoist
+  const hoists = upper[X.hoist]! > lower[X.hoist]!;
   const adjoint = new Float64Array(4);
   const xNew = new Float64Array(X.count);
   const oldNormals = new Float64Array(2 * nCons);
@@ -137,6 +143,12 @@ export function createOptimiser(model: ForceModel): Optimiser {
     let stable = false;
     let speedSlope = 0;
     let needJacobian = true;
+    // The board: curvature of speed over hoist, last step, and the gradient before it.
+    let b33 = HOIST_CURVATURE * x[X.speed]!;
+    let dHoist = 0;
+    let stepHoist = 0;
+    let gradHoist = 0;
+    let gradHoistOld = 0;
     const armScale = upper[X.arm]! - lower[X.arm]!;
 
     /** Newton on the balances alone, controls held, with the factors at hand; true when they are met. */
@@ -166,11 +178,13 @@ export function createOptimiser(model: ForceModel): Optimiser {
           ds0[i] = -c[i]!;
           th[i] = -jac[i * X.count + X.heel]!;
           td[i] = -jac[i * X.count + X.depower]!;
+          tb[i] = hoists ? -jac[i * X.count + X.hoist]! : 0;
           adjoint[i] = i === 0 ? 1 : 0;
         }
         luSolve(4, lu, pivots, ds0);
         luSolve(4, lu, pivots, th);
         luSolve(4, lu, pivots, td);
+        if (hoists) luSolve(4, lu, pivots, tb);
         luSolveTransposed(4, lu, pivots, adjoint); // d speed = -adjoint . dc
         stable = adjoint[RES.surge]! < 0;
       }
@@ -178,6 +192,34 @@ export function createOptimiser(model: ForceModel): Optimiser {
       const tie = TIE * speed;
       const grad1 = th[0]! - 2 * tie * x[X.heel]!;
       const grad2 = td[0]! - 2 * tie * x[X.depower]!;
+
+      let gainHoist = 0;
+      if (hoists) {
+        // What lowering the board gains, less what it costs at the limits that hold.
+        const mu = oldMultipliers;
+        let grad = tb[0]! + 2 * tie * (upper[X.hoist]! - x[X.hoist]!);
+        if (haveOld) {
+          grad -= ((mu[4]! - mu[5]!) * tb[3]!) / armScale + (mu[6]! - mu[7]!) * tb[2]!;
+          for (let k = 0; k < nSide; k++) {
+            if (mu[8 + k] === 0) continue;
+            let d = jacSide[k * X.count + X.hoist]!;
+            for (let i = 0; i < 4; i++) d += jacSide[k * X.count + BASIC[i]!]! * tb[i]!;
+            grad -= mu[8 + k]! * d;
+          }
+        }
+        if (needJacobian && Math.abs(stepHoist) > 1e-5) {
+          const curvature = (gradHoistOld - grad) / stepHoist;
+          b33 = Math.min(
+            20 * speed,
+            Math.max(0.5 * b33, curvature > 0 ? Math.min(curvature, 4 * b33) : 0, 0.02 * speed),
+          );
+        }
+        const most = 0.25 * radius;
+        dHoist = Math.min(most, Math.max(-most, grad / b33));
+        dHoist = Math.min(upper[X.hoist]! - x[X.hoist]!, Math.max(lower[X.hoist]! - x[X.hoist]!, dHoist));
+        gainHoist = grad * dHoist;
+        gradHoist = grad;
+      }
 
       // Lines in the plane of (heel, depower) steps.
       const { normals, limits } = qp;
@@ -192,17 +234,18 @@ export function createOptimiser(model: ForceModel): Optimiser {
       line(-1, 0, x[X.heel]! - lower[X.heel]!);
       line(0, 1, upper[X.depower]! - x[X.depower]!);
       line(0, -1, x[X.depower]! - lower[X.depower]!);
-      line(th[3]! / armScale, td[3]! / armScale, (upper[X.arm]! - x[X.arm]! - ds0[3]!) / armScale);
-      line(-th[3]! / armScale, -td[3]! / armScale, (x[X.arm]! + ds0[3]! - lower[X.arm]!) / armScale);
-      line(th[2]!, td[2]!, upper[X.rudder]! - x[X.rudder]! - ds0[2]!);
-      line(-th[2]!, -td[2]!, x[X.rudder]! + ds0[2]! - lower[X.rudder]!);
+      for (let i = 0; i < 4; i++) ds1[i] = ds0[i]! + tb[i]! * dHoist;
+      line(th[3]! / armScale, td[3]! / armScale, (upper[X.arm]! - x[X.arm]! - ds1[3]!) / armScale);
+      line(-th[3]! / armScale, -td[3]! / armScale, (x[X.arm]! + ds1[3]! - lower[X.arm]!) / armScale);
+      line(th[2]!, td[2]!, upper[X.rudder]! - x[X.rudder]! - ds1[2]!);
+      line(-th[2]!, -td[2]!, x[X.rudder]! + ds1[2]! - lower[X.rudder]!);
       for (let k = 0; k < nSide; k++) {
-        let g0 = g[k]!;
+        let g0 = g[k]! + jacSide[k * X.count + X.hoist]! * dHoist;
         let a1 = jacSide[k * X.count + X.heel]!;
         let a2 = jacSide[k * X.count + X.depower]!;
         for (let i = 0; i < 4; i++) {
           const d = jacSide[k * X.count + BASIC[i]!]!;
-          g0 += d * ds0[i]!;
+          g0 += d * ds1[i]!;
           a1 += d * th[i]!;
           a2 += d * td[i]!;
         }
@@ -250,13 +293,13 @@ export function createOptimiser(model: ForceModel): Optimiser {
       solvePlaneQp(qp, m, b11, b12, b22, grad1, grad2, rho);
       const dHeel = qp.p[0]!;
       const dDepower = qp.p[1]!;
-      const dSpeed = ds0[0]! + th[0]! * dHeel + td[0]! * dDepower;
-      const dLeeway = ds0[1]! + th[1]! * dHeel + td[1]! * dDepower;
-      const dRudder = ds0[2]! + th[2]! * dHeel + td[2]! * dDepower;
-      const dArm = ds0[3]! + th[3]! * dHeel + td[3]! * dDepower;
+      const dSpeed = ds1[0]! + th[0]! * dHeel + td[0]! * dDepower;
+      const dLeeway = ds1[1]! + th[1]! * dHeel + td[1]! * dDepower;
+      const dRudder = ds1[2]! + th[2]! * dHeel + td[2]! * dDepower;
+      const dArm = ds1[3]! + th[3]! * dHeel + td[3]! * dDepower;
 
       const cMax = Math.max(Math.abs(c[0]!), Math.abs(c[1]!), Math.abs(c[2]!), Math.abs(c[3]!));
-      const gain = grad1 * dHeel + grad2 * dDepower;
+      const gain = Math.abs(grad1 * dHeel + grad2 * dDepower) + Math.abs(gainHoist);
       const violation = violationAt(x, g);
       if (
         cMax < RESIDUAL_TOLERANCE &&
@@ -294,6 +337,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
         xNew[X.leeway] = x[X.leeway]! + alpha * dLeeway;
         xNew[X.rudder] = x[X.rudder]! + alpha * dRudder;
         xNew[X.arm] = x[X.arm]! + alpha * dArm;
+        xNew[X.hoist] = x[X.hoist]! + alpha * dHoist;
         xNew[X.depower] = Math.min(upper[X.depower]!, Math.max(lower[X.depower]!, xNew[X.depower]!));
         xNew[X.heel] = Math.min(upper[X.heel]!, Math.max(lower[X.heel]!, xNew[X.heel]!));
         model.residualInto(tws, twa, xNew, cNew);
@@ -328,6 +372,8 @@ export function createOptimiser(model: ForceModel): Optimiser {
       if (accepted) {
         stepHeel = xNew[X.heel]! - x[X.heel]!;
         stepDepower = xNew[X.depower]! - x[X.depower]!;
+        stepHoist = xNew[X.hoist]! - x[X.hoist]!;
+        gradHoistOld = gradHoist;
         gradOld1 = grad1;
         gradOld2 = grad2;
         oldNormals.set(normals);

@@ -136,6 +136,7 @@ function guesses(model: ForceModel): Float64Array[] {
     x[X.leeway] = 0.04;
     x[X.heel] = heel;
     x[X.depower] = depower;
+    x[X.hoist] = model.bounds.upper[X.hoist]!;
     return x;
   };
   return [guess(0.3, 0.1, 0), guess(0.35, 0.25, 0.4), guess(1, 0.1, 0.3)];

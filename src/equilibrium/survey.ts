@@ -107,6 +107,7 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
         factored = false;
         x[X.heel] = Math.max(lower[X.heel]!, heel);
         x[X.depower] = depower;
+        x[X.hoist] = upper[X.hoist]!;
         let before = Number.NaN;
         let failures = 0;
         // From fast to slow: the fastest stable equilibrium is met first, and leeway grows as speed falls.

@@ -12,7 +12,9 @@ export const X = {
   depower: 4,
   /** Crew's arm [m], positive to windward. */
   arm: 5,
-  count: 6,
+  /** Share of a board that is lowered, 0 to 1; held at 1 where there is a fixed keel. */
+  hoist: 6,
+  count: 7,
 } as const;
 
 /** Places in the residual vector: force along the course, across it, roll and yaw moment, each scaled. */
@@ -89,6 +91,8 @@ export interface SailingState {
   readonly crewArm: number;
   /** Crew arm over its limit on that side, -1 to 1. */
   readonly crewShare: number;
+  /** Share of the board lowered, 1 for a fixed keel. */
+  readonly boardDown: number;
   readonly sailSet: string;
   readonly regime: Regime;
   /** Largest scaled residual. */

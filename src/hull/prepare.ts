@@ -279,7 +279,21 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
   return {
     form,
     canoe: body,
-    warnings: [...rangeWarnings(form, options, options.planing), ...planingRange.warnings()],
+    warnings: [
+      ...rangeWarnings(form, options, options.planing),
+      ...(keel && keel.volume * water.density > keelMass
+        ? [
+            {
+              method: 'buoyancy of the keel',
+              parameter: 'share of the displacement',
+              value: (keel.volume * water.density) / load.mass,
+              range: [0, 0.5],
+              treatment: 'held at half of the displacement',
+            } as const,
+          ]
+        : []),
+      ...planingRange.warnings(),
+    ],
     heelMax: (HEEL_COUNT - 1) * HEEL_STEP,
     rightingArm: (heel) => righting.value(heel),
     wetted: (heel) => wettedBy.value(heel),

@@ -1,3 +1,4 @@
 export { type BestVmg, bestVmg, type Seed } from './best-vmg.js';
 export { defaultWindAngles, defaultWindSpeeds, predictPolar } from './predict.js';
 export type { Polar, PolarRequest } from './types.js';
+export { polarWarnings } from './warnings.js';

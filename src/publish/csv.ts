@@ -17,6 +17,7 @@ export const POLAR_COLUMNS = [
   'rudder_deg',
   'ease',
   'crew_share',
+  'board_down',
   'sails',
   'regime',
   'status',
@@ -40,7 +41,7 @@ function polarRow(row: string, result: SailingResult, d: Decimals): string {
   const f = figures(result);
   const head = [row, fixed(f.twsKn, d.speed), fixed(f.twaDeg, d.angle)];
   if (f.status === 'unbalanced')
-    return [...head, ...new Array<string>(12).fill(''), f.why, csvText(f.reason)].join(',');
+    return [...head, ...new Array<string>(13).fill(''), f.why, csvText(f.reason)].join(',');
   return [
     ...head,
     fixed(f.twaHeadingDeg, d.angle),
@@ -53,6 +54,7 @@ function polarRow(row: string, result: SailingResult, d: Decimals): string {
     fixed(f.rudderDeg, d.angle),
     fixed(f.ease, d.share + 1),
     fixed(f.crewShare, d.share + 1),
+    fixed(f.boardDown, d.share + 1),
     csvText(f.sailSet),
     csvText(f.regime),
     f.status,

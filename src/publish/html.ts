@@ -34,7 +34,7 @@ const DASHES = ['solid', 'dash', 'dot', 'dashdot'] as const;
 const HOVER =
   '<b>%{customdata[0]} kn wind</b><br>TWA %{customdata[1]}°<br>speed %{customdata[2]} kn<br>VMG %{customdata[3]} kn' +
   '<br>AWA %{customdata[4]}°<br>heel %{customdata[5]}°<br>leeway %{customdata[6]}°<br>ease %{customdata[7]}' +
-  '<br>crew %{customdata[8]}<br>%{customdata[9]}<br>sails: %{customdata[10]}<extra></extra>';
+  '<br>crew %{customdata[8]}%{customdata[11]}<br>%{customdata[9]}<br>sails: %{customdata[10]}<extra></extra>';
 
 function hoverFacts(f: StateFigures, d: Decimals): string[] {
   return [
@@ -49,6 +49,7 @@ function hoverFacts(f: StateFigures, d: Decimals): string[] {
     fixed(f.crewShare, d.share),
     escapeHtml(f.regime),
     escapeHtml(oneLine(f.sailSet)),
+    f.boardDown < 1 ? `<br>board ${fixed(f.boardDown, d.share)}` : '',
   ];
 }
 
@@ -178,6 +179,7 @@ const FULL_HEADS = [
   th('rudder', 'deg'),
   th('ease'),
   th('crew'),
+  th('board'),
   th('regime', '', true),
   th('sails', '', true),
 ];
@@ -199,7 +201,7 @@ function fullTable(report: PolarReport, i: number, d: Decimals): string {
     const f = figures(result);
     const head = `<th scope="row">${fixed(f.twaDeg, d.angle)}</th>`;
     if (f.status === 'unbalanced')
-      return `<tr>${head}<td class="none" colspan="11">${escapeHtml(`${f.why}: ${oneLine(f.reason)}`)}</td></tr>`;
+      return `<tr>${head}<td class="none" colspan="12">${escapeHtml(`${f.why}: ${oneLine(f.reason)}`)}</td></tr>`;
     const regime = [f.regime, ...(best ? ['best VMG'] : []), ...f.notes.map(oneLine)].join('; ');
     return `<tr${best ? ' class="best"' : ''}>${head}${[
       td(fixed(f.speedKn, d.speed)),
@@ -211,6 +213,7 @@ function fullTable(report: PolarReport, i: number, d: Decimals): string {
       td(fixed(f.rudderDeg, d.angle)),
       td(fixed(f.ease, d.share)),
       td(fixed(f.crewShare, d.share)),
+      td(fixed(f.boardDown, d.share)),
       td(regime, 'text'),
       td(oneLine(f.sailSet), 'text'),
     ].join('')}</tr>`;

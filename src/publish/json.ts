@@ -28,6 +28,7 @@ function state(r: SailingResult): Json {
     ease: rounded(f.ease),
     crew_share: rounded(f.crewShare),
     crew_arm_m: rounded(f.crewArmM),
+    board_down: rounded(f.boardDown),
     sails: f.sailSet,
     regime: f.regime,
     notes: f.notes,

@@ -1,6 +1,6 @@
 import { type Boat, type DescriptionRow, describeBoat, type Estimate } from '../boat/index.js';
 import type { SailingResult } from '../equilibrium/index.js';
-import type { Polar } from '../polar/index.js';
+import { type Polar, polarWarnings } from '../polar/index.js';
 import { degrees, toKnots } from '../units/index.js';
 import { type ResistanceReport, resistanceReport } from './resistance.js';
 
@@ -33,7 +33,9 @@ export function boatFacts(boat: Boat): BoatFacts {
 
 /** A boat and its polar, ready to be published. */
 export function polarReport(boat: Boat, polar: Polar): PolarReport {
-  return { boat: boatFacts(boat), polar, resistance: resistanceReport(boat) };
+  const facts = boatFacts(boat);
+  const warnings = [...facts.warnings, ...polarWarnings(boat, polar)];
+  return { boat: { ...facts, warnings }, polar, resistance: resistanceReport(boat) };
 }
 
 /** A balanced state in knots and degrees. */
@@ -52,6 +54,8 @@ export interface StateFigures {
   readonly ease: number;
   readonly crewShare: number;
   readonly crewArmM: number;
+  /** Share of a board that is lowered; 1 for a fixed keel. */
+  readonly boardDown: number;
   readonly sailSet: string;
   readonly regime: string;
   readonly notes: readonly string[];
@@ -92,6 +96,7 @@ export function figures(r: SailingResult): StateFigures | NoStateFigures {
     ease: r.ease,
     crewShare: r.crewShare,
     crewArmM: r.crewArm,
+    boardDown: r.boardDown,
     sailSet: r.sailSet,
     regime: r.regime,
     notes: r.notes,

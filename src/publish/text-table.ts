@@ -125,6 +125,7 @@ function stateLines(f: StateFigures): string {
       line('rudder', fixed(f.rudderDeg, 2), 'deg'),
       line('ease (share of heeling moment given up)', fixed(f.ease, 3), ''),
       line('crew (share of the arm fully out)', fixed(f.crewShare, 3), ''),
+      ...(f.boardDown < 1 ? [line('board (share lowered)', fixed(f.boardDown, 3), '')] : []),
       line('sails', shortened(oneLine(f.sailSet), 40), ''),
       line('regime', f.regime, ''),
       ...f.notes.map((n) => line('note', shortened(oneLine(n), 50), '')),

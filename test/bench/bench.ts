@@ -15,7 +15,7 @@ const built = (room: string): Promise<unknown> =>
 const { createSetSolvers, describeState, RES, solveAlone, stateVector, X } = (await built(
   'equilibrium',
 )) as typeof import('../../src/equilibrium/index.js');
-const { readBoat } = (await built('boat')) as typeof import('../../src/boat/index.js');
+const { assembleBoat, readBoat } = (await built('boat')) as typeof import('../../src/boat/index.js');
 const { defaultWindAngles, defaultWindSpeeds, predictPolar } = (await built(
   'polar',
 )) as typeof import('../../src/polar/index.js');
@@ -57,6 +57,30 @@ function perCall(n: number, f: () => void): number {
 const sample = balanced.filter((s) => s.sailSet === set.sailSet.name).slice(0, 120);
 const x0 = stateVector(sample[40]!);
 const evaluation = perCall(20000, () => model.residualInto(sample[40]!.tws, sample[40]!.twa, x0, c));
+const out = new Float64Array(32);
+const hullCost = perCall(200000, () => boat.hull.resistanceInto(x0[X.speed]!, x0[X.heel]!, out));
+const foilCost = perCall(200000, () =>
+  boat.foils.evaluateInto(x0[X.speed]!, x0[X.leeway]!, x0[X.rudder]!, x0[X.heel]!, 1, out),
+);
+const flow = { tws: 6, twa: 1, speed: 2.5, leeway: 0.06 };
+const airCost = perCall(20000, () => boat.sailSets[0]!.evaluateInto(flow, 0.2, 0.1, out));
+/** Bytes of new heap per call, over many calls without a collection between. */
+function allocated(n: number, f: () => void): number {
+  for (let i = 0; i < 2000; i++) f();
+  let least = Number.POSITIVE_INFINITY;
+  for (let k = 0; k < 5; k++) {
+    const before = process.memoryUsage().heapUsed;
+    for (let i = 0; i < n; i++) f();
+    least = Math.min(least, Math.max(0, (process.memoryUsage().heapUsed - before) / n));
+  }
+  return least;
+}
+const heapHull = allocated(200000, () => boat.hull.resistanceInto(x0[X.speed]!, x0[X.heel]!, out));
+const heapFoils = allocated(200000, () =>
+  boat.foils.evaluateInto(x0[X.speed]!, x0[X.leeway]!, x0[X.rudder]!, x0[X.heel]!, 1, out),
+);
+const heapAll = allocated(20000, () => model.residualInto(sample[40]!.tws, sample[40]!.twa, x0, c));
+const prepareCost = perCall(20, () => assembleBoat({ spec: boat.spec })) / 1000;
 const starts = sample.map((s) => {
   const x = stateVector(s);
   x[X.speed]! *= 0.97;
@@ -74,13 +98,14 @@ const reference = timed(() =>
     start[X.speed]! *= 0.97;
     start[X.heel]! *= 0.9;
     const x = new Float64Array(X.count);
-    let z = Array.from({ length: X.count }, (_, j) => start[j]! / scale[j]!);
+    let z = scale.map((s, j) => start[j]! / s);
     let value = { x: z, fx: 0 };
     for (const penalty of [1e2, 1e4, 1e6]) {
       value = fmin.nelderMead(
         (zz: number[]) => {
           let out = 0;
-          for (let j = 0; j < X.count; j++) {
+          x[X.hoist] = 1;
+          for (let j = 0; j < scale.length; j++) {
             x[j] = zz[j]! * scale[j]!;
             out += Math.max(0, x[j]! - model.bounds.upper[j]!, model.bounds.lower[j]! - x[j]!) ** 2;
             x[j] = Math.min(model.bounds.upper[j]!, Math.max(model.bounds.lower[j]!, x[j]!));
@@ -146,6 +171,10 @@ console.log(
   `force evaluations per state    mean ${f(polar.evaluations / all.length, 1)}, worst on the grid ${Math.max(...counts)}`,
 );
 console.log(`one force evaluation           ${f(evaluation)} us`);
+console.log(
+  `  of it hull, foils, sails      ${f(hullCost)}, ${f(foilCost)}, ${f(airCost)} us; new heap ${f(heapHull, 1)}, ${f(heapFoils, 1)} and in all ${f(heapAll, 1)} bytes a call`,
+);
+console.log(`assembling the boat            ${f(prepareCost, 1)} ms`);
 console.log(`one state from a neighbour     ${f(perState * 1000, 0)} us`);
 console.log('');
 console.log('ratios in this run (reference / ours, per state)');

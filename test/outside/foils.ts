@@ -1,10 +1,13 @@
 import {
+  FOIL,
   foilFormFactor,
   keelDownwash,
   liftSlopeHelmbold,
   liftSlopeWhickerFehlner,
 } from '../../src/foils/index.js';
+import { effectiveSpans, sideForceSlopes } from '../../src/hull/index.js';
 import { weissinger } from '../../src/lifting-line/index.js';
+import { demoBoat } from '../support/demo.js';
 import { absolute, type OutsideCheck, relative } from './check.js';
 
 const DEG = Math.PI / 180;
@@ -86,6 +89,61 @@ export const checks: readonly OutsideCheck[] = [
         rectangle(4).slope,
       ),
     ],
+  },
+  {
+    source: 'Keuning & Sonnenberg 1998, fin keels of the Delft series (coefficients from memory)',
+    quantity: 'side force of hull, keel and rudder amidships per leeway, demo keelboat, 0 to 20 deg of heel',
+    tolerance: 0.2,
+    errorUnit: 'relative',
+    printOnly: true,
+    showCases: true,
+    note: 'the regression was made for larger keels; the lifting line with the hull share of 2006 is used: more leeway',
+    run: () => {
+      const boat = demoBoat('keelboat');
+      const { form } = boat.hull;
+      const { keel } = boat.spec;
+      const draft = keel.span - keel.z;
+      const slopes = sideForceSlopes(draft, form.canoeDraft, form.wetted);
+      const out = new Float64Array(FOIL.count);
+      return [0, 10, 20].map((deg, i) => {
+        const heel = deg * DEG;
+        boat.foils.evaluateInto(3, 1e-3, 0, heel, 1, out);
+        const q = 0.5 * boat.spec.water.density * 9;
+        return relative(
+          `${deg} deg`,
+          slopes[i]!,
+          (out[FOIL.lift]! * Math.cos(heel)) / (q * form.wetted * 1e-3),
+        );
+      });
+    },
+  },
+  {
+    source: 'Keuning & Sonnenberg 1998, fin keels of the Delft series (coefficients from memory)',
+    quantity: 'effective span over draft of keel and hull, demo keelboat, 0 to 20 deg of heel',
+    tolerance: 0.3,
+    errorUnit: 'relative',
+    printOnly: true,
+    showCases: true,
+    note: 'the regression falls with speed; here at Froude number 0.39',
+    run: () => {
+      const boat = demoBoat('keelboat');
+      const { form } = boat.hull;
+      const { keel } = boat.spec;
+      const draft = keel.span - keel.z;
+      const taper = keel.chords[keel.chords.length - 1]! / keel.chords[0]!;
+      const speed = 3;
+      const fn = speed / Math.sqrt(boat.spec.gravity * form.lwl);
+      const spans = effectiveSpans(draft, form.canoeDraft, form.bwl, taper, fn);
+      const out = new Float64Array(FOIL.count);
+      return [0, 10, 20].map((deg, i) => {
+        const heel = deg * DEG;
+        boat.foils.evaluateInto(speed, 0.06, 0, heel, 1, out);
+        const q = 0.5 * boat.spec.water.density * speed * speed;
+        const side = out[FOIL.keelLift]! * Math.cos(heel);
+        const span = Math.sqrt((side * side) / (Math.PI * q * out[FOIL.keelInduced]!));
+        return relative(`${deg} deg`, spans[i]!, span / draft);
+      });
+    },
   },
   {
     source: 'Keuning, Katgert & Vermeulen 2006 (from memory)',

@@ -55,8 +55,8 @@ function balance(
 }
 
 /**
- * The highest speed at which everything balances within the limits, by going through heel, depower and speed on a
- * grid: at each the side force, heel and helm are balanced, and where the surplus of drive falls through zero the
+ * The highest speed at which everything balances within the limits, by going through board, heel, depower and speed
+ * on a grid: at each the side force, heel and helm are balanced, and where the surplus of drive falls through zero the
  * speed is solved for. Slow and plain. 0 when there is none.
  */
 export function bruteForceSpeed(
@@ -71,46 +71,52 @@ export function bruteForceSpeed(
   const { lower, upper } = model.bounds;
   const side = new Float64Array(Math.max(1, model.sideConditions));
   let best = 0;
-  for (let h = 0; h <= heels; h++) {
-    for (let t = 0; t <= depowers; t++) {
-      const x = new Float64Array(X.count);
-      x[X.heel] = lower[X.heel]! + ((upper[X.heel]! - lower[X.heel]!) * h) / heels;
-      x[X.depower] = 0.98 * (1 - (1 - t / depowers) ** 1.5);
-      let before: number | undefined;
-      for (let k = speeds; k >= 0; k--) {
-        x[X.speed] = model.speedScale * 0.02 * 130 ** (k / speeds);
-        const s = balance(model, tws, twa, x, [X.leeway, X.rudder, X.arm], [RES.sway, RES.yaw, RES.roll]);
-        if (s === undefined) {
-          before = undefined;
-          x[X.leeway] = 0;
-          x[X.rudder] = 0;
-          continue;
-        }
-        if (s > 0 && before !== undefined && before <= 0) {
-          const y = x.slice();
-          const done = balance(
-            model,
-            tws,
-            twa,
-            y,
-            [X.speed, X.leeway, X.rudder, X.arm],
-            [RES.surge, RES.sway, RES.roll, RES.yaw],
-          );
-          if (done !== undefined && y[X.speed]! > best) {
-            model.residualInto(tws, twa, y, new Float64Array(RES.count));
-            if (model.sideConditions > 0) model.sideConditionsInto(side);
-            const holds =
-              y[X.arm]! <= upper[X.arm]! &&
-              y[X.arm]! >= lower[X.arm]! &&
-              Math.abs(y[X.rudder]!) <= upper[X.rudder]! &&
-              Math.abs(y[X.leeway]!) < upper[X.leeway]! &&
-              side.every((v) => v <= 0);
-            if (holds) best = y[X.speed]!;
+  const hoists =
+    upper[X.hoist]! > lower[X.hoist]!
+      ? Array.from({ length: 3 }, (_, i) => lower[X.hoist]! + ((upper[X.hoist]! - lower[X.hoist]!) * i) / 2)
+      : [upper[X.hoist]!];
+  for (const hoist of hoists)
+    for (let h = 0; h <= heels; h++) {
+      for (let t = 0; t <= depowers; t++) {
+        const x = new Float64Array(X.count);
+        x[X.heel] = lower[X.heel]! + ((upper[X.heel]! - lower[X.heel]!) * h) / heels;
+        x[X.hoist] = hoist;
+        x[X.depower] = 0.98 * (1 - (1 - t / depowers) ** 1.5);
+        let before: number | undefined;
+        for (let k = speeds; k >= 0; k--) {
+          x[X.speed] = model.speedScale * 0.02 * 130 ** (k / speeds);
+          const s = balance(model, tws, twa, x, [X.leeway, X.rudder, X.arm], [RES.sway, RES.yaw, RES.roll]);
+          if (s === undefined) {
+            before = undefined;
+            x[X.leeway] = 0;
+            x[X.rudder] = 0;
+            continue;
           }
+          if (s > 0 && before !== undefined && before <= 0) {
+            const y = x.slice();
+            const done = balance(
+              model,
+              tws,
+              twa,
+              y,
+              [X.speed, X.leeway, X.rudder, X.arm],
+              [RES.surge, RES.sway, RES.roll, RES.yaw],
+            );
+            if (done !== undefined && y[X.speed]! > best) {
+              model.residualInto(tws, twa, y, new Float64Array(RES.count));
+              if (model.sideConditions > 0) model.sideConditionsInto(side);
+              const holds =
+                y[X.arm]! <= upper[X.arm]! &&
+                y[X.arm]! >= lower[X.arm]! &&
+                Math.abs(y[X.rudder]!) <= upper[X.rudder]! &&
+                Math.abs(y[X.leeway]!) < upper[X.leeway]! &&
+                side.every((v) => v <= 0);
+              if (holds) best = y[X.speed]!;
+            }
+          }
+          before = s;
         }
-        before = s;
       }
     }
-  }
   return best;
 }

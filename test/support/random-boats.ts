@@ -38,8 +38,13 @@ export function randomBoat(random: () => number, kind: 'sensible' | 'silly'): Bo
       armLee: crew.armLee,
       dragArea: crew.dragArea * factor(),
     },
-    keel: { ...keel, span: keel.span * factor(), rootChord: keel.rootChord * factor(), x: keel.x * factor() },
-    rudder: { ...rudder, span: rudder.span * factor(), rootChord: rudder.rootChord * factor() },
+    keel: {
+      ...keel,
+      span: keel.span * factor(),
+      chords: stretched(keel.chords, factor()),
+      x: keel.x * factor(),
+    },
+    rudder: { ...rudder, span: rudder.span * factor(), chords: stretched(rudder.chords, factor()) },
     rig: { ...rig, mastTop: rig.mastTop * rigUp },
     sails: base.sails.map((s) => {
       const foot = s.z[0]!;
@@ -47,4 +52,9 @@ export function randomBoat(random: () => number, kind: 'sensible' | 'silly'): Bo
     }),
   };
   return assembleBoat({ spec, estimates: [] });
+}
+
+/** Chords with the root's times a factor. */
+function stretched(chords: readonly number[], factor: number): number[] {
+  return chords.map((c, i) => (i === 0 ? c * factor : c));
 }

@@ -5,8 +5,9 @@ function foil(f: FoilSpec, s: number): FoilSpec {
   return {
     ...f,
     span: f.span * s,
-    rootChord: f.rootChord * s,
-    tipChord: f.tipChord * s,
+    chords: f.chords.map((c) => c * s),
+    twin: f.twin && { ...f.twin, offset: f.twin.offset * s },
+    bulb: f.bulb && { length: f.bulb.length * s, diameter: f.bulb.diameter * s },
     x: f.x * s,
     z: f.z * s,
   };
