@@ -817,12 +817,21 @@ export const boatFile = {
           describe:
             'Open water to windward: wave height then grows with the wind (JONSWAP). Give this or height.',
         },
+        period: {
+          type: 'quantity',
+          kind: 'time',
+          range: [0.3, 25],
+          missing: {
+            rule: 'with fetch: the peak period of the same growth law; with height it is needed only when the figures below are given by period',
+          },
+          describe: 'Peak period of the sea.',
+        },
         added_resistance: {
           type: 'list',
-          count: [1, 40],
+          count: [1, 400],
           missing: 'required',
           describe:
-            'Added resistance R over rho g Bwl^2/Lwl Hs^2 by true wind angle, rising; the ends hold beyond them.',
+            'Added resistance R over rho g Bwl^2/Lwl Hs^2 by true wind angle, rising, and by period where it is given; the ends hold beyond them.',
           entry: {
             type: 'section',
             describe: 'One angle.',
@@ -833,6 +842,13 @@ export const boatFile = {
                 range: [0, 180],
                 missing: 'required',
                 describe: 'True wind angle from the course; waves are taken to run with the wind.',
+              },
+              period: {
+                type: 'quantity',
+                kind: 'time',
+                range: [0.3, 25],
+                describe:
+                  'Peak period this row belongs to. Give it for all rows, sorted by period, or for none.',
               },
               coefficient: {
                 type: 'quantity',

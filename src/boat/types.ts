@@ -31,9 +31,14 @@ export interface WavesSpec {
   /** Significant height [m] in every wind; or the fetch [m] from which it grows with the wind. */
   readonly height?: number | undefined;
   readonly fetch?: number | undefined;
-  /** True wind angles [rad], rising, and the coefficients there. */
-  readonly twa: readonly number[];
-  readonly coefficient: readonly number[];
+  /** Peak period [s] where it is given; otherwise that of the fetch. */
+  readonly period?: number | undefined;
+  /** By period [s] rising (one table without a period: for all): true wind angles [rad] rising, and coefficients. */
+  readonly tables: readonly {
+    readonly period?: number | undefined;
+    readonly twa: readonly number[];
+    readonly coefficient: readonly number[];
+  }[];
 }
 
 /** Everything the boat file says, in SI and body axes, with estimates filled in. Plain data. */

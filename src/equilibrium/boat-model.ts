@@ -103,8 +103,20 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
 
   // Added resistance does not depend on the state: it is worked out when wind or angle change.
   const { waves } = spec;
-  const waveTable =
-    waves === undefined || waves.twa.length < 2 ? undefined : pchip(waves.twa, waves.coefficient);
+  const waveTables = (waves?.tables ?? []).map((t) => ({
+    period: t.period ?? 0,
+    at: t.twa.length < 2 ? () => t.coefficient[0]! : pchip(t.twa, t.coefficient).value,
+  }));
+  /** Between the tables of neighbouring periods in a straight line, held beyond the first and the last. */
+  const waveCoefficient = (twa: number, period: number): number => {
+    let i = 0;
+    while (i < waveTables.length - 2 && period > waveTables[i + 1]!.period) i++;
+    const a = waveTables[i]!;
+    const b = waveTables[i + 1];
+    if (b === undefined) return a.at(twa);
+    const t = Math.min(1, Math.max(0, (period - a.period) / (b.period - a.period)));
+    return a.at(twa) + t * (b.at(twa) - a.at(twa));
+  };
   let waveTws = Number.NaN;
   let waveTwa = Number.NaN;
   const setWaves = (tws: number, twa: number): void => {
@@ -112,8 +124,9 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
     waveTws = tws;
     waveTwa = twa;
     const u10 = tws * boat.wind.factor(10);
-    const height = waves.height ?? fetchLimitedSea(u10, waves.fetch ?? 0, g).height;
-    const coefficient = waveTable ? waveTable.value(twa) : waves.coefficient[0]!;
+    const grown = fetchLimitedSea(u10, waves.fetch ?? 0, g);
+    const height = waves.height ?? grown.height;
+    const coefficient = waveCoefficient(twa, waves.period ?? grown.period);
     forces.waves = (coefficient * spec.water.density * g * hull.form.bwl ** 2 * height * height) / length;
   };
 

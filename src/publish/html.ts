@@ -34,7 +34,7 @@ const DASHES = ['solid', 'dash', 'dot', 'dashdot'] as const;
 const HOVER =
   '<b>%{customdata[0]} kn wind</b><br>TWA %{customdata[1]}°<br>speed %{customdata[2]} kn<br>VMG %{customdata[3]} kn' +
   '<br>AWA %{customdata[4]}°<br>heel %{customdata[5]}°<br>leeway %{customdata[6]}°<br>ease %{customdata[7]}' +
-  '<br>crew %{customdata[8]}%{customdata[11]}<br>%{customdata[9]}<br>sails: %{customdata[10]}<extra></extra>';
+  '<br>crew %{customdata[8]}<br>%{customdata[9]}<br>sails: %{customdata[10]}<extra></extra>';
 
 function hoverFacts(f: StateFigures, d: Decimals): string[] {
   return [
@@ -46,10 +46,9 @@ function hoverFacts(f: StateFigures, d: Decimals): string[] {
     fixed(f.heelDeg, d.angle),
     fixed(f.leewayDeg, d.angle),
     fixed(f.ease, d.share),
-    fixed(f.crewShare, d.share),
+    fixed(f.crewShare, d.share) + (f.boardDown < 1 ? `, board ${fixed(f.boardDown, d.share)}` : ''),
     escapeHtml(f.regime),
     escapeHtml(oneLine(f.sailSet)),
-    f.boardDown < 1 ? `<br>board ${fixed(f.boardDown, d.share)}` : '',
   ];
 }
 

@@ -1,6 +1,6 @@
 import { DEGREE, FOOT, INCH, KNOT, POUND } from './constants.js';
 
-/** What a number in a text can be. Results are in m, m2, m3, kg, rad, m/s, kg/m3, N, deg C, or a plain ratio. */
+/** What a number in a text can be. Results are in m, m2, m3, kg, rad, m/s, kg/m3, N, deg C, s, or a plain ratio. */
 export type QuantityKind =
   | 'length'
   | 'area'
@@ -11,6 +11,7 @@ export type QuantityKind =
   | 'density'
   | 'force'
   | 'temperature'
+  | 'time'
   | 'ratio';
 
 /**
@@ -140,6 +141,13 @@ export const KINDS: Readonly<Record<QuantityKind, KindDefinition>> = {
     bareFactor: 1,
     example: '40 N',
     units: { N: 1, kN: 1000, newton: 1, newtons: 1, kgf: 9.80665, lbf: 4.4482216152605 },
+  },
+  time: {
+    noun: 'a time',
+    bareUnit: 's',
+    bareFactor: 1,
+    example: '3.5 s',
+    units: { s: 1, sec: 1, seconds: 1, min: 60 },
   },
   temperature: {
     noun: 'a temperature',

@@ -41,6 +41,7 @@ const BASE: Readonly<Record<QuantityKind, string>> = {
   density: 'kg/m3',
   force: 'N',
   temperature: 'degC',
+  time: 's',
   ratio: '',
 };
 

@@ -205,7 +205,7 @@ describe('the page in a browser', () => {
       const { page } = open;
       await page.emulateMedia({ colorScheme: theme });
       // The page's own policy forbids waiting for a condition inside it.
-      await expect.poll(() => page.evaluate(PAPER)).toBe(paper);
+      await expect.poll(() => page.evaluate(PAPER), { timeout: 10_000 }).toBe(paper);
       expect(await page.evaluate(GROUND)).toBe(ground);
       await expectReadable(page);
     },

@@ -21,6 +21,22 @@ afterAll(() => {
 
 const longest = (text: string): number => Math.max(...text.split('\n').map((l) => [...l].length));
 
+describe('check with drawings', () => {
+  it('draws the hull into a page when asked, and nothing otherwise', () => {
+    const plain = runCommand(['check', KEELBOAT], { cwd: folder.path });
+    expect(folder.list()).toEqual([]);
+    const run = runCommand(['check', KEELBOAT, '--plot', 'plans'], { cwd: folder.path });
+    expect(run.code).toBe(0);
+    expect(run.out.startsWith(plain.out.trimEnd())).toBe(true);
+    expect(folder.list()).toEqual(['plans', join('plans', 'keelboat-hull.html')]);
+    const page = readFileSync(join(folder.path, 'plans', 'keelboat-hull.html'), 'utf8');
+    for (const id of ['body-plan', 'waterlines', 'section-areas', 'righting-arms', 'cautions'])
+      expect(page).toContain(`<section id="${id}"`.replace('<section id="cautions"', 'id="cautions"'));
+    expect(page).toMatch(/No judgement of stability/);
+    expect(page).not.toMatch(/NaN|<script/);
+  });
+});
+
 describe('polar', () => {
   it('prints targets and cautions and writes table, results and page', () => {
     const run = runCommand(['polar', KEELBOAT, ...GRID], { cwd: folder.path });

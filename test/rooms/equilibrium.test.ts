@@ -141,6 +141,31 @@ describe.each(DEMO_BOATS)('%s: every state of the polar', (name) => {
   });
 });
 
+describe('a board that can be raised', () => {
+  it('is lowered as far as is fastest: no fixed share beats the choice', () => {
+    const boat = demoBoat('trapeze-dinghy');
+    for (const [tws, twa] of [
+      [4, 45],
+      [8, 42],
+      [8, 100],
+      [5, 160],
+    ] as const) {
+      const free = solveState(boat, { tws, twa: twa * DEG });
+      if (free.status !== 'balanced') throw new Error('no state');
+      expect(free.boardDown).toBeGreaterThanOrEqual(boat.spec.boardRange[0]);
+      for (const share of [0.3, 0.5, 0.7, 0.85, 1]) {
+        const held = assembleBoat({ spec: { ...boat.spec, boardRange: [share, share] } });
+        const s = solveState(held, { tws, twa: twa * DEG });
+        if (s.status === 'balanced') expect(s.speed).toBeLessThan(free.speed * (1 + 1e-6));
+      }
+    }
+    const up = solveState(boat, { tws: 5, twa: 45 * DEG });
+    const down = solveState(boat, { tws: 5, twa: 170 * DEG });
+    if (up.status !== 'balanced' || down.status !== 'balanced') throw new Error('no state');
+    expect(up.boardDown).toBeGreaterThan(down.boardDown + 0.3);
+  });
+});
+
 describe('identities of the whole boat', () => {
   const cases = [
     [8, 45],

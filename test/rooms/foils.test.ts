@@ -191,7 +191,9 @@ describe('planforms, twin blades, bulbs and kicked-up rudders', () => {
     const [r, t] = [base.keel.chords[0]!, base.keel.chords[1]!];
     const a = evaluate(plain(), 3, 0.06, 0.02, 0.2, 0.7);
     const b = evaluate(plain({ chords: [r, 0.5 * (r + t), t] }), 3, 0.06, 0.02, 0.2, 0.7);
-    a.forEach((v, i) => expect(b[i]).toBeCloseTo(v, 7));
+    a.forEach((v, i) => {
+      expect(b[i]).toBeCloseTo(v, 7);
+    });
     // An ellipse carries its lift with the least induced drag of its span, a pointed tip higher up than a square one.
     const ellipse = Array.from({ length: 21 }, (_, i) => 0.6 * Math.sqrt(1 - (i / 20.2) ** 2));
     const e = evaluate(plain({ chords: ellipse, sweep: 0 }), 3, 0.06, 0, 0);

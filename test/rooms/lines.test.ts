@@ -56,7 +56,9 @@ describe('one hull given in several ways', () => {
       expect(Math.abs(g.lcbFromForward / g.lwl - f.lcbFromForward / f.lwl)).toBeLessThan(0.0025);
       const heels = [10, 20, 30, 40, 50, 60].map((d) => d * DEG);
       const [p, q] = [rightingArms(whole, heels), rightingArms(b, heels)];
-      p.forEach((a, i) => expect(Math.abs(q[i]!.inboard / a.inboard - 1)).toBeLessThan(0.005));
+      p.forEach((a, i) => {
+        expect(Math.abs(q[i]!.inboard / a.inboard - 1)).toBeLessThan(0.005);
+      });
     });
   }
 

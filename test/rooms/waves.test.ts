@@ -42,6 +42,32 @@ describe('a sea', () => {
     expect(forceBalance(calm, a).rows.some((r) => r.name.startsWith('waves'))).toBe(false);
   });
 
+  it('of a period takes the figures between those of its neighbours', () => {
+    const rows = (period: string) => `waves:
+  height: 0.5 m
+  period: ${period}
+  added_resistance:
+    - { period: 2 s, twa: 40 deg, coefficient: 0.02 }
+    - { period: 2 s, twa: 120 deg, coefficient: 0.01 }
+    - { period: 4 s, twa: 40 deg, coefficient: 0.08 }
+    - { period: 4 s, twa: 120 deg, coefficient: 0.03 }`;
+    const speed = (period: string): number => {
+      const s = solveState(withWaves(rows(period)), { tws: 6, twa: 0.75 });
+      return s.status === 'balanced' ? s.speed : Number.NaN;
+    };
+    const [short, middle, long, longer] = ['2 s', '3 s', '4 s', '9 s'].map(speed);
+    expect(middle).toBeLessThan(short!);
+    expect(middle).toBeGreaterThan(long!);
+    expect(longer).toBe(long);
+    expect(() => withWaves(rows('3 s').replace('{ period: 4 s, twa: 40', '{ twa: 40'))).toThrow(
+      /only some rows/,
+    );
+    expect(() => withWaves(rows('3 s').replace('  period: 3 s\n', ''))).toThrow(
+      /by period, but the sea has none/,
+    );
+    expect(() => withWaves(rows('3 s').replaceAll('4 s', '1 s'))).toThrow(/periods must not fall/);
+  });
+
   it('needs one of height and fetch, and rising angles', () => {
     expect(() => withWaves(SEA.replace('height: 0.5 m', 'height: 0.5 m\n  fetch: 2 km'))).toThrow(
       BoatFileError,

@@ -4,7 +4,7 @@ import type { Lines } from '../../src/hull/index.js';
 
 export function asOffsets(lines: Lines, lwl: number): string {
   const rows = ['aft_of_stem,half_breadth,height'];
-  for (const s of lines.stations) s.y.forEach((y, i) => rows.push(`${0.5 * lwl - s.x},${y},${s.z[i]}`));
+  for (const s of lines.stations) rows.push(...s.y.map((y, i) => `${0.5 * lwl - s.x},${y},${s.z[i]}`));
   return `${rows.join('\n')}\n`;
 }
 
@@ -14,7 +14,7 @@ export function asObj(lines: Lines, scale = 1): string {
   const m = lines.stations[0]!.y.length;
   for (const side of [1, -1])
     for (const s of lines.stations)
-      s.y.forEach((y, i) => out.push(`v ${s.x * scale} ${side * y * scale} ${s.z[i]! * scale}`));
+      out.push(...s.y.map((y, i) => `v ${s.x * scale} ${side * y * scale} ${s.z[i]! * scale}`));
   const half = lines.stations.length * m;
   for (let a = 0; a + 1 < lines.stations.length; a++)
     for (let i = 0; i + 1 < m; i++) {
