@@ -1,14 +1,18 @@
 import { logWindProfile, powerWindProfile, type WindProfile } from '../environment/index.js';
 import { prepareFoilSystem } from '../foils/index.js';
 import { generateRoundBilge, type HullOptions, prepareHull } from '../hull/index.js';
-import { prepareSailSet, type WindageBody } from '../sails/index.js';
+import { prepareSailSet, prepareTableSet, type SailShape, type WindageBody } from '../sails/index.js';
 import type { Boat, BoatSpec, Estimate } from './types.js';
 
 /**
- * Drag coefficients of bluff bodies in the air. Mast and wires: cylinder below its critical Reynolds number, 1.1
- * (Hoerner, Fluid-Dynamic Drag 1965, from memory); hull side 1.0 and end 0.6: judgement.
+ * Drag coefficients of bluff bodies in the air. Wires: cylinder below its critical Reynolds number, 1.1 (Hoerner,
+ * Fluid-Dynamic Drag 1965, from memory); hull side 1.0, end 0.6 and boom 1.0: judgement.
  */
-const DRAG = { cylinder: 1.1, hullSide: 1.0, hullEnd: 0.6 } as const;
+const DRAG = { cylinder: 1.1, hullSide: 1.0, hullEnd: 0.6, boom: 1.0 } as const;
+/** Share of a mast's drag that the sail behind it takes away along its luff; judgement. */
+const MAST_SHIELD = 0.5;
+/** The boom lies near the apparent wind, under the foot of its sail: this share of its length counts; judgement. */
+const BOOM_SHARE = 0.2;
 
 /** Wind profile of a boat. */
 export function windProfileOf(spec: BoatSpec): WindProfile {
@@ -17,14 +21,33 @@ export function windProfileOf(spec: BoatSpec): WindProfile {
     : powerWindProfile(spec.wind.referenceHeight, spec.wind.exponent);
 }
 
-/** The bodies of a boat that catch the wind without driving it: topsides, mast, wires and crew. */
-export function windageOf(spec: BoatSpec): WindageBody[] {
+/** A mast in the wind: along the luff of a sail it is partly sheltered. */
+function mastBody(
+  name: string,
+  m: { x: number; top: number; foot: number; diameter: number; drag: number },
+  sail: SailShape | undefined,
+): WindageBody {
+  const low = Math.max(m.foot, sail?.z[0] ?? m.top);
+  const high = Math.min(m.top, sail?.z[sail.z.length - 1] ?? m.top);
+  const covered = Math.max(0, high - low);
+  const full = m.drag * m.diameter * (m.top - m.foot);
+  const less = MAST_SHIELD * m.drag * m.diameter * covered;
+  const area = full - less;
+  const middle = area > 0 ? (full * 0.5 * (m.top + m.foot) - less * 0.5 * (low + high)) / area : m.foot;
+  return { name, frontal: area, side: area, x: m.x, z: middle };
+}
+
+/**
+ * The bodies of a boat that catch the wind without driving it: topsides, masts, boom, wires and crew.
+ * @param sails the sails that are up; left out: bare poles
+ */
+export function windageOf(spec: BoatSpec, sails: readonly SailShape[] = []): WindageBody[] {
   const { dimensions, loa } = spec.hull;
   const { rig, crew } = spec;
   const { freeboard, beamMax } = dimensions;
-  const deck = Math.min(freeboard, rig.mastTop);
-  const mast = DRAG.cylinder * rig.mastDiameter * (rig.mastTop - deck);
+  const foot = Math.min(freeboard, rig.mastTop);
   const wires = DRAG.cylinder * rig.riggingArea;
+  const main = sails.find((s) => s.kind === 'mainsail');
   const bodies: WindageBody[] = [
     {
       name: 'hull',
@@ -33,16 +56,35 @@ export function windageOf(spec: BoatSpec): WindageBody[] {
       x: 0,
       z: 0.5 * freeboard,
     },
-    { name: 'mast', frontal: mast, side: mast, x: rig.mastX, z: 0.5 * (rig.mastTop + deck) },
+    mastBody(
+      'mast',
+      { x: rig.mastX, top: rig.mastTop, foot, diameter: rig.mastDiameter, drag: rig.mastDrag },
+      main,
+    ),
     { name: 'crew', frontal: crew.dragArea, side: crew.dragArea, x: crew.x, z: crew.z },
   ];
+  if (main !== undefined) {
+    const boom = BOOM_SHARE * DRAG.boom * rig.mastDiameter * rig.boomLength;
+    bodies.push({
+      name: 'boom',
+      frontal: boom,
+      side: boom,
+      x: rig.mastX - 0.5 * rig.boomLength,
+      z: rig.boomHeight,
+    });
+  }
+  if (rig.mizzen !== undefined) {
+    const { x, top, diameter } = rig.mizzen;
+    const sail = sails.find((s) => s.kind === 'mizzen');
+    bodies.push(mastBody('mizzen mast', { x, top, foot, diameter, drag: rig.mastDrag }, sail));
+  }
   if (wires > 0) {
     bodies.push({
       name: 'rigging',
       frontal: wires,
       side: wires,
       x: rig.mastX,
-      z: 0.5 * (rig.mastTop + deck),
+      z: 0.5 * (rig.mastTop + foot),
     });
   }
   return bodies;
@@ -89,23 +131,31 @@ export function assembleBoat(input: { spec: BoatSpec; estimates?: readonly Estim
     sidewaysVolume: hull.form.sidewaysVolume,
     water: spec.water,
   });
-  const windage = windageOf(spec);
   const byName = new Map(spec.sails.map((s) => [s.name, s]));
-  const sailSets = spec.sailSets.map((set) =>
-    prepareSailSet({
+  const sailSets = spec.sailSets.map((set) => {
+    const sails = set.sails.map((name) => {
+      const sail = byName.get(name);
+      if (sail === undefined) {
+        throw new RangeError(`sail set ${set.name}: there is no sail called "${name}"`);
+      }
+      return sail;
+    });
+    return prepareSailSet({
       name: set.name,
-      sails: set.sails.map((name) => {
-        const sail = byName.get(name);
-        if (sail === undefined) {
-          throw new RangeError(`sail set ${set.name}: there is no sail called "${name}"`);
-        }
-        return sail;
-      }),
-      windage,
+      sails,
+      windage: windageOf(spec, sails),
       boomLimit: spec.rig.boomLimit,
       wind,
       airDensity: spec.air.density,
       mastTop: spec.rig.mastTop,
+    });
+  });
+  const tables = spec.measuredRigs.map((table) =>
+    prepareTableSet({
+      table,
+      windage: table.windageIncluded ? [] : windageOf(spec),
+      wind,
+      airDensity: spec.air.density,
     }),
   );
   return {
@@ -113,7 +163,7 @@ export function assembleBoat(input: { spec: BoatSpec; estimates?: readonly Estim
     lines,
     hull,
     foils,
-    sailSets,
+    sailSets: [...sailSets, ...tables],
     wind,
     mass,
     centre: { x, z },

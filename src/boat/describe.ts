@@ -68,7 +68,8 @@ export function describeBoat(boat: Boat): DescriptionRow[] {
   section = 'sails';
   for (const sail of spec.sails) {
     const { area, x, z } = sailArea(sail);
-    row(`${sail.name}: area`, area, 'm2');
+    row(`${sail.name}: ${sail.cloth === undefined ? 'area' : 'projected area'}`, area, 'm2');
+    if (sail.cloth !== undefined) row(`${sail.name}: area of the cloth`, sail.cloth, 'm2');
     row(`${sail.name}: centre above the waterline`, z, 'm');
     row(`${sail.name}: centre aft of the stem`, aft(x), 'm');
   }

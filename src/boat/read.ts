@@ -7,7 +7,8 @@ import { nothingBeside, type ReadBeside } from './beside.js';
 import { Estimator } from './estimator.js';
 import { type ParsedFile, type Path, parseBoatFile } from './parse-file.js';
 import { readLines } from './read-lines.js';
-import { readSail } from './read-sails.js';
+import { readMeasuredRigs } from './read-measured-rigs.js';
+import { type RigPlaces, readSail, reefsOf } from './read-sails.js';
 import { readWaves } from './read-waves.js';
 import type { BoatFileValue } from './schema.js';
 import type { BoatSpec, CrewSpec, Estimate, WeightItem } from './types.js';
@@ -16,6 +17,8 @@ import type { BoatSpec, CrewSpec, Estimate, WeightItem } from './types.js';
 const CAST_IRON = 7200;
 /** Outboard reach [m] of a body's centre beyond the gunwale; common practice for a person of 1.80 m, no source. */
 const REACH = { hiking: 0.35, trapeze: 1.0, rail: -0.07 } as const;
+/** Drag of a cylinder below its critical Reynolds number (Hoerner, Fluid-Dynamic Drag 1965, from memory). */
+const CYLINDER_DRAG = 1.1;
 /** Drag area [m2] of one of the crew; judgement. */
 const CREW_DRAG = { hiking: 0.4, trapeze: 0.55, rail: 0.3 } as const;
 /** Share of that area which each further body of a row on the rail adds, in the lee of its neighbour; judgement. */
@@ -48,7 +51,7 @@ export function readBoatSpec(
   const estimator = new Estimator();
   const faired = readLines(parsed.value, parsed.complain, beside);
   parsed.problems.throwIfAny();
-  const spec = buildSpec(withLines(parsed.value, faired), estimator, parsed.complain, faired);
+  const spec = buildSpec(withLines(parsed.value, faired), estimator, parsed.complain, faired, beside);
   parsed.problems.throwIfAny();
   if (spec === undefined) throw new Error('a boat file was rejected without a reason');
   return { spec, estimates: estimator.estimates };
@@ -83,6 +86,7 @@ function buildSpec(
   est: Estimator,
   complain: Complain,
   faired: FairedLines | undefined,
+  beside: ReadBeside,
 ): BoatSpec | undefined {
   const lwl = file.hull.waterline_length;
   /** x of a place given as a distance aft of the fore end of the waterline, and back. */
@@ -277,7 +281,8 @@ function buildSpec(
     rudder,
     rig,
     sails,
-    sailSets: readSailSets(file, est, complain),
+    sailSets: readSailSets(file, sails, est, complain),
+    measuredRigs: readMeasuredRigs(file, est, complain, beside, x),
     waves: readWaves(file, complain),
     limits: { heel, rudder: rudderLimit },
   };
@@ -588,13 +593,41 @@ function readRig(
       'both are heights above the waterline',
     );
   }
-  const place = { x, lwl, mastAft: r.mast_aft_of_stem, mastTop, boomHeight, forestay, freeboard };
+  const mizzen = r.mizzen_mast;
+  if (mizzen !== undefined && mizzen.aft_of_stem <= r.mast_aft_of_stem) {
+    complain(
+      ['rig', 'mizzen_mast', 'aft_of_stem'],
+      `the second mast (${say(mizzen.aft_of_stem)} m) does not stand behind the first (${say(r.mast_aft_of_stem)} m)`,
+      'both are measured from the fore end of the waterline',
+    );
+  }
+  // Pole and sprit are estimated once, where a sail needs them.
+  let pole = r.pole_length;
+  let sprit = r.sprit_length;
+  const place: RigPlaces = {
+    x,
+    lwl,
+    mastAft: r.mast_aft_of_stem,
+    mastTop,
+    boomHeight,
+    forestay,
+    freeboard,
+    mizzen: mizzen && { aft: mizzen.aft_of_stem, top: mizzen.height },
+    poleEnd: () => {
+      pole ??= est.pick(['rig', 'pole_length'], undefined, () => Math.max(0.3, r.mast_aft_of_stem));
+      return r.mast_aft_of_stem - pole;
+    },
+    spritEnd: () => {
+      sprit ??= est.pick(['rig', 'sprit_length'], undefined, () => 0.12 * lwl);
+      return -sprit;
+    },
+  };
   const sails: SailShape[] = [];
   let foot = 0;
   for (const [name, sail] of Object.entries(file.sails)) {
     const shape = readSail(name, sail, place, est, complain);
     if (shape === undefined) continue;
-    sails.push(shape);
+    sails.push(shape, ...reefsOf(shape, sail, ['sails', name], complain));
     if (shape.kind === 'mainsail') foot = Math.max(foot, shape.chord[0]!);
   }
   const rig = {
@@ -609,22 +642,49 @@ function readRig(
       foot > 0 ? 1.03 * foot : 0.3 * mastTop,
     ),
     boomLimit: est.pick(['rig', 'boom_limit'], r.boom_limit, () => (stayed ? 78 : 85) * DEGREE),
+    mastDrag: est.pick(['rig', 'mast_drag'], r.mast_drag, () => CYLINDER_DRAG),
+    mizzen: mizzen && {
+      x: x(mizzen.aft_of_stem),
+      top: mizzen.height,
+      diameter: est.pick(['rig', 'mizzen_mast', 'diameter'], mizzen.diameter, () => 0.011 * mizzen.height),
+    },
   };
   return { rig, sails };
 }
 
-function readSailSets(file: BoatFileValue, est: Estimator, complain: Complain): BoatSpec['sailSets'] {
+function readSailSets(
+  file: BoatFileValue,
+  sails: readonly SailShape[],
+  est: Estimator,
+  complain: Complain,
+): BoatSpec['sailSets'] {
   const names = Object.keys(file.sails);
   const sets = file.sail_sets;
+  let given: { name: string; sails: readonly string[] }[];
   if (sets === undefined) {
     est.record(['sail_sets'], names.join(' + '));
-    const one = { name: names.join(' + '), sails: names };
-    checkSet(['sails'], one.sails, file, complain);
-    return [one];
+    given = [{ name: names.join(' + '), sails: names }];
+    checkSet(['sails'], names, file, complain);
+  } else {
+    given = Object.entries(sets).map(([name, members]) => {
+      checkSet(['sail_sets', name], members, file, complain);
+      return { name, sails: members };
+    });
   }
-  return Object.entries(sets).map(([name, sails]) => {
-    checkSet(['sail_sets', name], sails, file, complain);
-    return { name, sails };
+  // Every reef of the sails of a set is a set of its own; off-wind sails come down before a reef goes in (judgement).
+  return given.flatMap((set) => {
+    const kinds = set.sails.map((s) => file.sails[s]?.kind);
+    const most = kinds.some((k) => k === 'spinnaker' || k === 'gennaker' || k === 'reacher')
+      ? 0
+      : Math.max(0, ...set.sails.map((s) => file.sails[s]?.reefs?.length ?? 0));
+    const reefed = Array.from({ length: most }, (_, i) => ({
+      name: `${set.name}, reef ${i + 1}`,
+      sails: set.sails.map((s) => {
+        const own = `${s}, reef ${Math.min(i + 1, file.sails[s]?.reefs?.length ?? 0)}`;
+        return sails.some((shape) => shape.name === own) ? own : s;
+      }),
+    }));
+    return [set, ...reefed];
   });
 }
 
@@ -639,12 +699,14 @@ function checkSet(path: Path, sails: readonly string[], file: BoatFileValue, com
       likely !== undefined ? `did you mean "${likely}"?` : `the sails are ${names.join(', ')}`,
     );
   }
-  for (const kind of ['mainsail', 'jib'] as const) {
-    const same = sails.filter((s) => Object.hasOwn(file.sails, s) && file.sails[s]!.kind === kind);
+  for (const group of [['mainsail'], ['mizzen'], ['jib'], ['spinnaker', 'gennaker', 'reacher']] as const) {
+    const same = sails.filter(
+      (s) => Object.hasOwn(file.sails, s) && group.some((kind) => kind === file.sails[s]!.kind),
+    );
     if (same.length > 1) {
       complain(
         path,
-        `${same.join(' and ')} are both of the kind ${kind}; a set holds one of a kind`,
+        `${same.join(' and ')} are both of the kind ${group.join(', ')}; a set holds one of a kind`,
         'list under sail_sets which sails go up together',
       );
     }

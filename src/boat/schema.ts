@@ -82,6 +82,9 @@ const liftLimit = (rule: string) =>
     describe: 'Largest lift coefficient before the foil stalls or draws air.',
   }) as const satisfies Field;
 
+const width = (describe: string) =>
+  ({ type: 'quantity', kind: 'length', range: [0.02, 20], describe }) as const satisfies Field;
+
 const rootDepth = (rule: string) =>
   ({
     type: 'quantity',
@@ -698,6 +701,56 @@ export const boatFile = {
           missing: { rule: '1.03 of the foot of the mainsail (judgement)' },
           describe: 'Length of the boom.',
         },
+        pole_length: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0.2, 12],
+          missing: { rule: 'as long as the mast stands aft of the stem (judgement)' },
+          describe: 'Length of the spinnaker pole, from the mast.',
+        },
+        sprit_length: {
+          type: 'quantity',
+          kind: 'length',
+          range: [0, 6],
+          missing: { rule: '12 % of the waterline length where there is a gennaker or reacher (judgement)' },
+          describe: 'Length of the bowsprit before the fore end of the waterline.',
+        },
+        mizzen_mast: {
+          type: 'section',
+          describe: 'A second mast, of a yawl, ketch or cat-ketch.',
+          keys: {
+            aft_of_stem: {
+              type: 'quantity',
+              kind: 'length',
+              range: [0, 30],
+              missing: 'required',
+              describe: `Fore side of the second mast, ${AFT}.`,
+            },
+            height: {
+              type: 'quantity',
+              kind: 'length',
+              range: [1, 50],
+              missing: 'required',
+              describe: 'Its top above the waterline.',
+            },
+            diameter: {
+              type: 'quantity',
+              kind: 'length',
+              range: [0.02, 0.5],
+              missing: { rule: '0.011 of its height (judgement)' },
+              describe: 'Mean of its section.',
+            },
+          },
+        },
+        mast_drag: {
+          type: 'quantity',
+          kind: 'ratio',
+          range: [0.1, 1.5],
+          missing: {
+            rule: '1.1, a cylinder below its critical Reynolds number; behind a sail half of it counts (judgement)',
+          },
+          describe: 'Drag coefficient of the mast section on its diameter, bare.',
+        },
         boom_limit: {
           type: 'quantity',
           kind: 'angle',
@@ -718,25 +771,26 @@ export const boatFile = {
         keys: {
           kind: {
             type: 'choice',
-            choices: ['mainsail', 'jib'],
+            choices: ['mainsail', 'mizzen', 'jib', 'spinnaker', 'gennaker', 'reacher'],
             missing: 'required',
-            describe: 'What kind of sail it is.',
+            describe:
+              'What kind of sail it is. spinnaker: symmetric, on a pole; gennaker: asymmetric, from a sprit; reacher: flat, on a tight luff before the forestay.',
           },
           luff: {
             type: 'quantity',
             kind: 'length',
             range: [0.5, 40],
             missing: {
-              rule: 'mainsail: from the boom to 1 % under the top of the mast; jib: 94 % of the way from its tack to the forestay at the mast (judgement)',
+              rule: 'mainsail: from the boom to 1 % under the top of the mast; jib: 94 % of the way from its tack to the forestay at the mast; off-wind sail: the way from tack to head (judgement)',
             },
-            describe: 'Length of the fore edge.',
+            describe: 'Length of the fore edge; under a gaff, up to the throat.',
           },
           foot: {
             type: 'quantity',
             kind: 'length',
             range: [0.3, 15],
             missing: {
-              rule: 'from the area when that is given; otherwise mainsail 0.38 of the luff, jib 0.40 of the luff (judgement)',
+              rule: 'from the area when that is given; otherwise mainsail 0.38 of the luff, jib 0.40, off-wind sail 0.55 (judgement)',
             },
             describe: 'Length of the lower edge.',
           },
@@ -746,12 +800,108 @@ export const boatFile = {
             range: [0.5, 200],
             describe: 'Area of the cloth. With luff and foot it sets the roach of a mainsail.',
           },
+          quarter_width: width('Mainsail: width from leech to luff at a quarter of the height.'),
+          half_width: {
+            ...width('Width at half the height, of a mainsail or an off-wind sail.'),
+            missing: {
+              rule: 'off-wind sail: from the area and the foot, or as wide as the foot (judgement)',
+            },
+          },
+          three_quarter_width: width('Mainsail: width at three quarters of the height.'),
+          upper_width: width('Mainsail: width at seven eighths of the height.'),
           head_width: {
             type: 'quantity',
             kind: 'length',
             range: [0, 5],
             missing: { rule: 'mainsail: 5 % of the foot (judgement)' },
             describe: 'Mainsail only: width at the head.',
+          },
+          gaff_length: {
+            type: 'quantity',
+            kind: 'length',
+            range: [0.2, 12],
+            describe: 'Mainsail only: length of the gaff that spreads the head of a four-cornered sail.',
+          },
+          gaff_angle: {
+            type: 'quantity',
+            kind: 'angle',
+            range: [0, 88],
+            missing: { rule: '60 deg where there is a gaff (judgement)' },
+            describe: 'Angle of the gaff above the horizontal.',
+          },
+          luff_perpendicular: {
+            type: 'quantity',
+            kind: 'length',
+            range: [0.2, 15],
+            describe:
+              'Jib only: shortest distance from the clew to the luff. Gives the foot, with its overlap of the mast.',
+          },
+          goose_wing: {
+            type: 'yes-no',
+            missing: { rule: 'jib: no' },
+            describe: 'Jib only: it is set to windward on a pole before the wind.',
+          },
+          head_height: {
+            type: 'quantity',
+            kind: 'length',
+            range: [0.5, 50],
+            missing: {
+              rule: 'off-wind sail: 0.5 % of the mast height above the forestay, for a gennaker 97 % of the mast height (judgement)',
+            },
+            describe: 'Off-wind sail only: height of its head above the waterline.',
+          },
+          projected: {
+            type: 'quantity',
+            kind: 'ratio',
+            range: [0.5, 1],
+            missing: { rule: 'spinnaker 80 %, gennaker 85 %, reacher 97 % (judgement)' },
+            describe: 'Off-wind sail only: share of its cloth that the wind sees.',
+          },
+          reefs: {
+            type: 'list',
+            count: [1, 4],
+            describe:
+              'Mainsail or mizzen: share of the height that stays up with each reef taken in, the first one first, as [85 %, 70 %]. Each makes a sail set of its own.',
+            entry: {
+              type: 'quantity',
+              kind: 'ratio',
+              range: [0.3, 0.97],
+              describe: 'Share of the height left.',
+            },
+          },
+          section: {
+            type: 'section',
+            describe: 'How its sections behave, where you know better than the table of section limits.',
+            keys: {
+              least_drag: {
+                type: 'quantity',
+                kind: 'ratio',
+                range: [0, 0.2],
+                missing: { rule: 'from the table of section limits for its kind' },
+                describe: 'Drag coefficient of a section at its best lift coefficient.',
+              },
+              drag_rise: {
+                type: 'quantity',
+                kind: 'ratio',
+                range: [0.001, 0.5],
+                missing: { rule: 'from the table of section limits for its kind' },
+                describe: 'Growth of that drag with the square of the lift coefficient away from it.',
+              },
+              least_drag_lift: {
+                type: 'quantity',
+                kind: 'ratio',
+                range: [0, 1.5],
+                missing: { rule: 'from the table of section limits for its kind' },
+                describe: 'Lift coefficient at which the drag is least.',
+              },
+              square_drag: {
+                type: 'quantity',
+                kind: 'ratio',
+                range: [0.5, 2],
+                missing: { rule: 'from the table of section limits for its kind' },
+                describe: 'Force coefficient when the sail stands square to the wind.',
+              },
+            },
           },
           roach: {
             type: 'quantity',
@@ -766,7 +916,7 @@ export const boatFile = {
             kind: 'length',
             range: [-5, 25],
             missing: {
-              rule: 'mainsail: the mast; jib: 2 % of the waterline length aft of the stem (judgement)',
+              rule: 'mainsail: the mast; jib: 2 % of the waterline length aft of the stem; spinnaker: the end of the pole; gennaker and reacher: the end of the sprit (judgement)',
             },
             describe: `Fore lower corner of the sail, ${AFT}.`,
           },
@@ -774,7 +924,9 @@ export const boatFile = {
             type: 'quantity',
             kind: 'length',
             range: [0, 10],
-            missing: { rule: 'mainsail: the boom; jib: freeboard plus 2 % of the mast height (judgement)' },
+            missing: {
+              rule: 'mainsail: the boom; jib, gennaker and reacher: freeboard plus 2 % of the mast height; spinnaker: freeboard plus 12 % (judgement)',
+            },
             describe: 'Height of that corner above the waterline.',
           },
           lift_limit: {
@@ -797,6 +949,98 @@ export const boatFile = {
         count: [1, 4],
         describe: 'The sails of the set.',
         entry: { type: 'text', longest: 80, describe: 'Name of a sail.' },
+      },
+    },
+    measured_rigs: {
+      type: 'named',
+      count: [1, 8],
+      describe:
+        'Sail sets known by coefficients from a tunnel or a computation, under names of your choice. Each is one more sail set.',
+      entry: {
+        type: 'section',
+        describe: 'One sail set by its coefficients.',
+        keys: {
+          area: {
+            type: 'quantity',
+            kind: 'area',
+            range: [0.5, 400],
+            missing: 'required',
+            describe: 'Area the coefficients refer to.',
+          },
+          centre_aft_of_stem: {
+            type: 'quantity',
+            kind: 'length',
+            range: [-2, 25],
+            missing: 'required',
+            describe: `Centre of effort, ${AFT}.`,
+          },
+          centre_height: {
+            type: 'quantity',
+            kind: 'length',
+            range: [0.3, 30],
+            missing: 'required',
+            describe:
+              'Height of the centre of effort above the waterline, where a row gives none of its own.',
+          },
+          effective_height: {
+            type: 'quantity',
+            kind: 'length',
+            range: [0.5, 60],
+            missing: { rule: '1.1 times the mast height (judgement)' },
+            describe:
+              'Height whose square says how much of the drag is induced: lift^2 area / (pi height^2).',
+          },
+          windage: {
+            type: 'choice',
+            choices: ['included', 'left out'],
+            missing: { rule: 'left out: hull, mast, rigging and crew are added' },
+            describe: 'Whether the coefficients include hull, mast, rigging and crew.',
+          },
+          table: {
+            type: 'text',
+            longest: 200,
+            describe:
+              'Name of a CSV file beside this one with the columns awa (degrees), lift, drag and, if known, height (m).',
+          },
+          rows: {
+            type: 'list',
+            count: [3, 200],
+            describe: 'The coefficients here: apparent wind angles rising. Instead of a table.',
+            entry: {
+              type: 'section',
+              describe: 'One angle.',
+              keys: {
+                awa: {
+                  type: 'quantity',
+                  kind: 'angle',
+                  range: [0, 180],
+                  missing: 'required',
+                  describe: 'Apparent wind angle.',
+                },
+                lift: {
+                  type: 'quantity',
+                  kind: 'ratio',
+                  range: [-1, 4],
+                  missing: 'required',
+                  describe: 'Lift coefficient: across the apparent wind.',
+                },
+                drag: {
+                  type: 'quantity',
+                  kind: 'ratio',
+                  range: [0, 4],
+                  missing: 'required',
+                  describe: 'Drag coefficient: along the apparent wind.',
+                },
+                height: {
+                  type: 'quantity',
+                  kind: 'length',
+                  range: [0.3, 30],
+                  describe: 'Height of the centre of effort above the waterline.',
+                },
+              },
+            },
+          },
+        },
       },
     },
     waves: {

@@ -1,7 +1,7 @@
 import type { Fluid, WindProfile } from '../environment/index.js';
 import type { FoilSpec, FoilSystem } from '../foils/index.js';
 import type { Hull, Lines, MainDimensions, RangeWarning, ResiduaryMethod } from '../hull/index.js';
-import type { SailSet, SailShape } from '../sails/index.js';
+import type { CoefficientTable, SailSet, SailShape } from '../sails/index.js';
 
 /** One part of the boat's weight, without the crew. */
 export interface WeightItem {
@@ -80,9 +80,14 @@ export interface BoatSpec {
     readonly boomLimit: number;
     readonly boomHeight: number;
     readonly boomLength: number;
+    /** Drag coefficient of the bare mast section. */
+    readonly mastDrag: number;
+    readonly mizzen?: { readonly x: number; readonly top: number; readonly diameter: number } | undefined;
   };
   readonly sails: readonly SailShape[];
   readonly sailSets: readonly { readonly name: string; readonly sails: readonly string[] }[];
+  /** Sail sets known by their coefficients. */
+  readonly measuredRigs: readonly (CoefficientTable & { readonly windageIncluded: boolean })[];
   /** Left out: flat water. */
   readonly waves?: WavesSpec | undefined;
   readonly limits: {

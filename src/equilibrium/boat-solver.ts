@@ -25,6 +25,7 @@ const EASE_SHOWN = 0.005;
 
 function regimeOf(model: BoatModel, x: Float64Array, ease: number): Regime {
   const { upper } = model.bounds;
+  if (model.sailSet.spec.sails.some((s) => (s.reef ?? 0) > 0)) return 'reefed';
   if (ease > EASE_SHOWN) return 'easing';
   if (x[X.heel]! > upper[X.heel]! - 1e-6) return 'heel limited';
   if (x[X.arm]! > upper[X.arm]! * (1 - 1e-6)) return 'crew full out';

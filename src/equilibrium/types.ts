@@ -64,7 +64,13 @@ export interface ForceModel {
   ): number;
 }
 
-export type Regime = 'crew inboard' | 'crew part out' | 'crew full out' | 'easing' | 'heel limited';
+export type Regime =
+  | 'crew inboard'
+  | 'crew part out'
+  | 'crew full out'
+  | 'easing'
+  | 'reefed'
+  | 'heel limited';
 
 /** Why no state is reported. */
 export type Unbalance = 'no drive' | 'overpowered' | 'foil stalled' | 'rudder at its limit' | 'not converged';

@@ -85,7 +85,8 @@ function rangeWarnings(form: HullForm, options: HullOptions, maxFn: boolean): Ra
 /**
  * A hull floating at its load, with resistance and righting arm tabulated for quick and smooth evaluation.
  * Friction: ITTC-57 on 0.7 Lwl and the heeled wetted area, no form factor. Residuary: the Delft regression of the
- * floating hull, clipped at zero, monotone between rows, fading below the first and held above Fn 0.60. Planing: blend
+ * floating hull, clipped at zero, monotone between rows, fading below the first; above Fn 0.60 held for a hull that
+ * planes, rising on for one that does not. Planing: blend
  * to Savitsky's least drag by w = smoothstep((FnVol - 1.5) / 1.0), then the running maximum over speed.
  * @throws RangeError when the hull cannot carry the load, or a figure of the load or the options is out of range
  */
@@ -136,6 +137,16 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
     while (fn[fn.length - 1]! > 0.6 + 1e-9) {
       fn.pop();
       ratio.pop();
+    }
+    // A hull that does not plane goes on climbing its own wave: beyond the last row with the mean slope of the two
+    // intervals before it (judgement). A hull that planes is taken over by the planing blend: its ratio is held.
+    if (!options.planing) {
+      const n = fn.length - 1;
+      const slope = Math.max(0, (ratio[n]! - ratio[n - 2]!) / (fn[n]! - fn[n - 2]!));
+      for (const beyond of [0.1, 0.4, 1, 2]) {
+        fn.push(fn[n]! + beyond);
+        ratio.push(ratio[n]! + beyond * slope);
+      }
     }
     // Below the first row the waves fade faster than any table shows: the fourth power of Froude number (judgement).
     const f0 = fn[0]!;

@@ -28,7 +28,7 @@ export function polarWarnings(boat: Boat, polar: Polar): RangeWarning[] {
       parameter: 'Froude number',
       value: froude,
       range: [0.1, 0.6],
-      treatment: 'ratio held above 0.60: such speeds are too high for a hull that does not plane',
+      treatment: 'continued beyond 0.60 with the slope before it (judgement): such speeds are a guess',
     });
   }
   if (spec.hull.measured !== undefined) {

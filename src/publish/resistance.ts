@@ -130,5 +130,5 @@ export function resistanceHtml(r: ResistanceReport): string {
     );
   }
   return `<div class="charts">${charts.join('\n')}</div>
-<p class="soft">Hull and keel volume only: keel, rudder and sails are in the force tables. ${r.planes ? 'Above the displacement range planing blends in; the curve never falls.' : 'Above Froude number 0.60 the ratio of the regression is held.'}</p>`;
+<p class="soft">Hull and keel volume only: keel, rudder and sails are in the force tables. ${r.planes ? 'Above the displacement range planing blends in; the curve never falls.' : 'Above Froude number 0.60 the ratio of the regression goes on with the slope before it.'}</p>`;
 }

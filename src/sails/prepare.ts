@@ -10,17 +10,18 @@ import {
 import type { BoxQp } from '../numerics/index.js';
 import {
   ATTACHED_COS,
+  CARRIAGE,
   COST_CEILING,
   COST_FLOOR,
   FULL_NORMAL_FORCE,
-  JIB_BLANKET,
-  JIB_FADE,
   LUFFING_DRAG,
+  type Ramp,
   SEPARATION_END,
   SEPARATION_START,
 } from './section-limits.js';
 import { profileAt, sailArea } from './shapes.js';
 import { AERO, type SailLoading, type SailSet, type SailSetSpec } from './types.js';
+import { addWindageInto, flowAtInto } from './windage.js';
 
 /** Nodes per sail: drive within 0.4 % and side force within 1.2 % of six times as many. */
 const NODES = 16;
@@ -32,6 +33,11 @@ const NORMAL_CHORD_SHARE = 0.45;
 function smoothstep(x: number, a: number, b: number): number {
   const t = Math.min(1, Math.max(0, (x - a) / (b - a)));
   return t * t * (3 - 2 * t);
+}
+
+/** Share that a ramp has reached at an angle; 0 without a ramp. */
+function reached(r: Ramp | undefined, angle: number): number {
+  return r === undefined ? 0 : r.share * smoothstep(angle, r.start, r.end);
 }
 
 /** max(x, m) with its corner rounded over m - h .. m + h: continuous in value and slope, exact outside. */
@@ -125,19 +131,17 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
   const angle = new Float64Array(sails.length);
   const blanket = new Float64Array(sails.length);
   const separated = new Float64Array(sails.length);
+  const stands = new Float64Array(sails.length);
+  const carriage = sails.map((s) => CARRIAGE[s.kind]);
+  const blankets = sails.some((s) => s.kind === 'mainsail');
   const lowest = new Float64Array(sails.length);
   const scratch = new Float64Array(AERO.count);
   const rho = spec.airDensity;
   const { wind } = spec;
   const mean = { u: 0, v: 0 };
 
-  const flowAt = (flow: Readonly<SailingFlow>, heel: number, height: number): void => {
-    const cosHeel = Math.cos(heel);
-    const w = flow.tws * wind.factor(height * cosHeel);
-    const a = flow.twa - flow.leeway;
-    mean.u = w * Math.cos(a) + flow.speed * Math.cos(flow.leeway);
-    mean.v = (w * Math.sin(a) - flow.speed * Math.sin(flow.leeway)) * cosHeel;
-  };
+  const flowAt = (flow: Readonly<SailingFlow>, heel: number, height: number): void =>
+    flowAtInto(wind, flow, heel, height, mean);
 
   const setFlow = (flow: Readonly<SailingFlow>, heel: number): void => {
     const cosHeel = Math.cos(heel);
@@ -160,16 +164,21 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
     for (let b = 0; b < sails.length; b++) {
       flowAt(flow, heel, geometry[b]!.z);
       angle[b] = Math.atan2(Math.max(0, mean.v), mean.u);
-      const isJib = sails[b]!.kind === 'jib';
-      const fade = isJib ? 1 - JIB_FADE.share * smoothstep(angle[b]!, JIB_FADE.start, JIB_FADE.end) : 1;
-      blanket[b] =
-        isJib && sails.length > 1
-          ? 1 - JIB_BLANKET.share * smoothstep(angle[b]!, JIB_BLANKET.start, JIB_BLANKET.end)
-          : 1;
-      const limit = sails[b]!.section.clMax * fade * blanket[b]!;
+      const c = carriage[b]!;
+      const a = angle[b]!;
+      stands[b] = c.stands === undefined ? 1 : reached(c.stands, a);
+      const covered = blankets ? reached(c.blanket, a) : 0;
+      const wing = sails[b]!.gooseWinged ? reached(c.gooseWing, a) : 0;
+      blanket[b] = 1 - covered * (1 - wing);
+      const limit = sails[b]!.section.clMax * (1 - reached(c.fade, a)) * blanket[b]! * stands[b]!;
       for (let i = first[b]!; i < first[b + 1]!; i++) clMax[i] = limit;
-      lowest[b] = roundedMax(angle[b]! - spec.boomLimit, 0, 0.03);
-      separated[b] = smoothstep(lowest[b]!, SEPARATION_START, SEPARATION_END);
+      if (c.squared !== undefined) {
+        lowest[b] = 0;
+        separated[b] = reached(c.squared, a);
+      } else {
+        lowest[b] = roundedMax(a - Math.min(spec.boomLimit, c.trimLimit ?? spec.boomLimit), 0, 0.03);
+        separated[b] = smoothstep(lowest[b]!, SEPARATION_START, SEPARATION_END);
+      }
     }
   };
 
@@ -213,7 +222,7 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
           const off = (2 * gi) / c - s * section.cl0;
           const profile =
             0.5 * rho * (section.cd0 * s * s * chordWidth[i]! * blanket[b]! + section.k * off * off * c * w);
-          const slack = LUFFING_DRAG * (1 - kept) * Math.max(0, cosB[i]!) * blanket[b]!;
+          const slack = LUFFING_DRAG * ((1 - kept) * Math.max(0, cosB[i]!) + (1 - stands[b]!)) * blanket[b]!;
           const drag = profile + 0.5 * rho * (induced[i]! + slack * s * s * chordWidth[i]!);
           const x = attached * (lift * sinB[i]! - drag * cosB[i]!);
           const y = attached * (lift * cosB[i]! + drag * sinB[i]!);
@@ -239,7 +248,7 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
         const a = bestIncidence(qs - price * mc, qc + price * ms, lowest[b]!);
         const normal =
           section.cd90 * (a >= FULL_NORMAL_FORCE ? 1 : Math.sin((0.5 * Math.PI * a) / FULL_NORMAL_FORCE));
-        const f = 0.5 * rho * separated[b]! * blanket[b]! * normal;
+        const f = 0.5 * rho * separated[b]! * blanket[b]! * stands[b]! * normal;
         const [cl, cd] = [f * Math.cos(a), f * Math.sin(a)];
         for (let i = first[b]!; i < first[b + 1]!; i++) {
           const q = speed[i]! * chordWidth[i]!;
@@ -255,24 +264,8 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
     }
   };
 
-  const addWindage = (flow: Readonly<SailingFlow>, heel: number, out: Float64Array): void => {
-    for (const body of spec.windage) {
-      flowAt(flow, heel, body.z);
-      const q = 0.5 * rho * Math.sqrt(mean.u * mean.u + mean.v * mean.v);
-      const x = -q * body.frontal * mean.u;
-      const y = q * body.side * mean.v;
-      out[AERO.windageDrive]! += x;
-      out[AERO.windageSide]! += y;
-      out[AERO.windageMoment]! += y * body.z;
-      out[AERO.windageSideX]! += y * body.x;
-      out[AERO.windageDriveZ]! += x * body.z;
-    }
-    out[AERO.drive]! += out[AERO.windageDrive]!;
-    out[AERO.side]! += out[AERO.windageSide]!;
-    out[AERO.heelMoment]! += out[AERO.windageMoment]!;
-    out[AERO.sideX]! += out[AERO.windageSideX]!;
-    out[AERO.driveZ]! += out[AERO.windageDriveZ]!;
-  };
+  const addWindage = (flow: Readonly<SailingFlow>, heel: number, out: Float64Array): void =>
+    addWindageInto(spec.windage, wind, rho, flow, heel, out);
 
   /** Share of the full loading's moment that the priced loading keeps. */
   const shareOf = (part: number, whole: number): number => {

@@ -1,36 +1,138 @@
+import { pchip } from '../numerics/index.js';
 import { sectionLimits } from './section-limits.js';
 import type { SailShape, SectionLimits } from './types.js';
 
 const STEPS = 24;
 
-/** A mainsail from its main dimensions [m]; x forward, z above the waterline. */
+/** Widths of a sail from leech to luff at shares of its height, rising, the foot (0) and the head (1) among them. */
+export interface Widths {
+  readonly at: readonly number[];
+  readonly width: readonly number[];
+}
+
+/** A spar that spreads the head of a four-cornered sail: length [m], and angle [rad] above the horizontal. */
+export interface Gaff {
+  readonly length: number;
+  readonly angle: number;
+}
+
+/** A mainsail or mizzen from its main dimensions [m]; x forward, z above the waterline. */
 export interface MainsailDimensions {
   readonly name: string;
+  readonly kind?: 'mainsail' | 'mizzen' | undefined;
   readonly luff: number;
   readonly foot: number;
   /** Width of the head(board). */
   readonly headWidth: number;
   /** Share by which the chord at half height exceeds the straight line from foot to head. */
   readonly roach: number;
+  /** Measured widths; they stand instead of foot, head width and roach. */
+  readonly widths?: Widths | undefined;
+  /** Four-cornered: the luff ends at the throat, and the gaff carries the head on from there. */
+  readonly gaff?: Gaff | undefined;
   readonly tackX: number;
   readonly tackZ: number;
   readonly section?: SectionLimits | undefined;
 }
 
-/** Chords of a mainsail: the straight leech plus a roach of parabolic share, largest at half height. */
+/**
+ * Chords of a mainsail: the straight leech plus a roach of parabolic share, largest at half height; or a smooth curve
+ * through measured widths (pin-head, fat-head, square-head alike); or, under a gaff, a straight leech from clew to peak.
+ */
 export function mainsailShape(d: MainsailDimensions): SailShape {
+  const kind = d.kind ?? 'mainsail';
+  const section = d.section ?? sectionLimits[kind];
   const z: number[] = [];
   const chord: number[] = [];
   const xLead: number[] = [];
+  if (d.gaff !== undefined) {
+    const peakX = d.tackX - d.gaff.length * Math.cos(d.gaff.angle);
+    const peakZ = d.tackZ + d.luff + d.gaff.length * Math.sin(d.gaff.angle);
+    const clewX = d.tackX - d.foot;
+    const height = peakZ - d.tackZ;
+    const throat = d.luff / height;
+    // A point stands at the throat, where the leading edge turns.
+    const heights = [
+      ...Array.from({ length: STEPS / 2 }, (_, i) => (throat * i) / (STEPS / 2)),
+      ...Array.from({ length: STEPS / 2 + 1 }, (_, i) => throat + ((1 - throat) * i) / (STEPS / 2)),
+    ];
+    for (const s of heights) {
+      const lead = s <= throat ? d.tackX : d.tackX + ((peakX - d.tackX) * (s - throat)) / (1 - throat);
+      const straight = lead - (clewX + (peakX - clewX) * s);
+      z.push(d.tackZ + s * height);
+      xLead.push(lead);
+      chord.push(straight + 4 * s * (1 - s) * d.roach * 0.5 * d.foot);
+    }
+    return { name: d.name, kind, z, chord, xLead, section };
+  }
+  const measured = d.widths && pchip(d.widths.at, d.widths.width);
   for (let i = 0; i <= STEPS; i++) {
     const s = i / STEPS;
     const straight = d.foot + (d.headWidth - d.foot) * s;
     const half = 0.5 * (d.foot + d.headWidth);
     z.push(d.tackZ + s * d.luff);
-    chord.push(straight + 4 * s * (1 - s) * d.roach * half);
+    chord.push(measured ? measured.value(s) : straight + 4 * s * (1 - s) * d.roach * half);
     xLead.push(d.tackX);
   }
-  return { name: d.name, kind: 'mainsail', z, chord, xLead, section: d.section ?? sectionLimits.mainsail };
+  return { name: d.name, kind, z, chord, xLead, section };
+}
+
+/** A sail with its lower part tied down: the share of the height that stays up, its foot at the old tack. */
+export function reefedShape(s: SailShape, share: number, reef: number): SailShape {
+  const foot = s.z[0]!;
+  const height = s.z[s.z.length - 1]! - foot;
+  const heights = Array.from(
+    { length: STEPS + 1 },
+    (_, i) => foot + height * (1 - share + (share * i) / STEPS),
+  );
+  const lowered = height * (1 - share);
+  // What was above the reef keeps its leading edge's slope and starts at the tack.
+  const shift = profileAt(s.z, s.xLead, foot) - profileAt(s.z, s.xLead, foot + lowered);
+  return {
+    ...s,
+    reef,
+    z: heights.map((z) => z - lowered),
+    chord: heights.map((z) => profileAt(s.z, s.chord, z)),
+    xLead: heights.map((z) => profileAt(s.z, s.xLead, z) + shift),
+  };
+}
+
+/** A sail for off the wind [m], set between a tack and a halyard; areas of cloth. */
+export interface OffWindDimensions {
+  readonly name: string;
+  readonly kind: 'spinnaker' | 'gennaker' | 'reacher';
+  readonly area: number;
+  readonly foot: number;
+  /** Width at half height. */
+  readonly halfWidth: number;
+  /** Share of the cloth's widths that the wind sees. */
+  readonly projected: number;
+  readonly tackX: number;
+  readonly tackZ: number;
+  readonly headX: number;
+  readonly headZ: number;
+  readonly section?: SectionLimits | undefined;
+}
+
+/**
+ * Projected chords of an off-wind sail: a smooth curve through foot, width at half height and a narrow head, to the
+ * scale of its area; the leading edge runs straight from tack to head.
+ */
+export function offWindShape(d: OffWindDimensions): SailShape {
+  const rise = d.headZ - d.tackZ;
+  if (!(rise > 0)) throw new RangeError(`the head of ${d.name} is not above its tack`);
+  const curve = pchip([0, 0.5, 1], [d.foot, d.halfWidth, 0.04 * d.halfWidth]);
+  const along = Array.from({ length: STEPS + 1 }, (_, i) => i / STEPS);
+  const shape: SailShape = {
+    name: d.name,
+    kind: d.kind,
+    z: along.map((s) => d.tackZ + s * rise),
+    chord: along.map((s) => curve.value(s)),
+    xLead: along.map((s) => d.tackX + s * (d.headX - d.tackX)),
+    section: d.section ?? sectionLimits[d.kind],
+  };
+  const scale = (d.projected * d.area) / sailArea(shape).area;
+  return { ...shape, cloth: d.area, chord: shape.chord.map((c) => c * scale) };
 }
 
 /** A jib from tack, head and foot [m]: a triangle whose luff lies on the forestay. */
@@ -44,6 +146,7 @@ export interface JibDimensions {
   /** A point of the forestay above the tack that gives its slope: where it meets the mast. */
   readonly headX: number;
   readonly headZ: number;
+  readonly gooseWinged?: boolean | undefined;
   readonly section?: SectionLimits | undefined;
 }
 
@@ -61,7 +164,8 @@ export function jibShape(d: JibDimensions): SailShape {
     chord.push(d.foot * (1 - 0.97 * s));
     xLead.push(d.tackX + along * (d.headX - d.tackX));
   }
-  return { name: d.name, kind: 'jib', z, chord, xLead, section: d.section ?? sectionLimits.jib };
+  const section = d.section ?? sectionLimits.jib;
+  return { name: d.name, kind: 'jib', z, chord, xLead, section, gooseWinged: d.gooseWinged };
 }
 
 /** Value of a shape's profile at a height, linear between its points. */

@@ -1,6 +1,7 @@
 import type { SailingFlow, WindProfile } from '../environment/index.js';
 
-export type SailKind = 'mainsail' | 'jib';
+/** A mizzen is a second mainsail; spinnaker: symmetric, on a pole; gennaker: asymmetric; reacher: flat, on a tight luff. */
+export type SailKind = 'mainsail' | 'mizzen' | 'jib' | 'spinnaker' | 'gennaker' | 'reacher';
 
 /** Section behaviour of a sail. Every number has a source or says "judgement" in the defaults table. */
 export interface SectionLimits {
@@ -23,6 +24,12 @@ export interface SailShape {
   /** x [m] of the leading edge at each height. */
   readonly xLead: readonly number[];
   readonly section: SectionLimits;
+  /** A jib that is set to windward on a pole before the wind. */
+  readonly gooseWinged?: boolean | undefined;
+  /** Number of the reef taken in; 0 or left out: none. */
+  readonly reef?: number | undefined;
+  /** Cloth area [m2] where the chords are projected ones. */
+  readonly cloth?: number | undefined;
 }
 
 /** Bluff bodies in the air. */

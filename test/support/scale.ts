@@ -63,12 +63,24 @@ export function froudeScaled(boat: Boat, s: number): Boat {
       riggingArea: b.rig.riggingArea * s * s,
       boomHeight: b.rig.boomHeight * s,
       boomLength: b.rig.boomLength * s,
+      mizzen: b.rig.mizzen && {
+        x: b.rig.mizzen.x * s,
+        top: b.rig.mizzen.top * s,
+        diameter: b.rig.mizzen.diameter * s,
+      },
     },
     sails: b.sails.map((x) => ({
       ...x,
       z: x.z.map((v) => v * s),
       chord: x.chord.map((v) => v * s),
       xLead: x.xLead.map((v) => v * s),
+    })),
+    measuredRigs: b.measuredRigs.map((r) => ({
+      ...r,
+      area: r.area * s * s,
+      x: r.x * s,
+      height: r.height.map((h) => h * s),
+      effectiveHeight: r.effectiveHeight * s,
     })),
   };
   return assembleBoat({ spec, estimates: [] });
