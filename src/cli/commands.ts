@@ -112,6 +112,20 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
       checkCommand({ boat: file(argv.boat), json: argv.json === true, plot: text(argv.plot) });
     },
   },
+  sails: {
+    usage: 'sails <boat>',
+    describe: 'show what each sail set gives over apparent wind angle, and how it is loaded',
+    examples: ['polarwright sails boats/keelboat.yaml', 'polarwright sails mine.yaml --out reports'],
+    positional: BOAT,
+    options: {
+      out: { type: 'string', describe: 'folder to write a page and a table (CSV) to' },
+      json: JSON_OPTION,
+    },
+    run: async (argv) => {
+      const { sailsCommand } = await import('./sails-command.js');
+      sailsCommand({ boat: file(argv.boat), json: argv.json === true, out: text(argv.out) });
+    },
+  },
   new: {
     usage: 'new [file]',
     describe: 'write a boat file to start from',

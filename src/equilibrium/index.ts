@@ -18,6 +18,7 @@ export {
   type ForceBalance,
   type ForceModel,
   type ForceRow,
+  type LinesOfAction,
   type NoState,
   RES,
   type Regime,

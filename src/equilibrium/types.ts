@@ -132,6 +132,38 @@ export interface ForceRow {
   readonly yaw: number;
 }
 
+/** Resultants of air and water and where they act. Lengths m, forces N; x forward of amidships, z above the waterline. */
+export interface LinesOfAction {
+  readonly air: {
+    readonly forward: number;
+    readonly leeward: number;
+    /** Height along the mast of the side force. */
+    readonly z: number;
+    readonly x: number;
+    /** Distance to leeward in plan, by heel. */
+    readonly planOffset: number;
+  };
+  readonly water: {
+    readonly forward: number;
+    readonly leeward: number;
+    readonly depth: number;
+    readonly x: number;
+    readonly planOffset: number;
+  };
+  /** Distance [m] by which the two pass each other in plan: without the rudder's share they would turn the boat. */
+  readonly lead: number;
+  readonly crewWeight: number;
+  readonly crewHeight: number;
+  readonly boatWeight: number;
+  readonly massHeight: number;
+  readonly length: number;
+  readonly beam: number;
+  readonly freeboard: number;
+  readonly canoeDraft: number;
+  readonly draft: number;
+  readonly mastTop: number;
+}
+
 export interface ForceBalance {
   readonly state: SailingState;
   readonly rows: readonly ForceRow[];
@@ -141,6 +173,8 @@ export interface ForceBalance {
     readonly roll: number;
     readonly yaw: number;
   };
+  /** Where the resultants act, for a sketch. */
+  readonly lines: LinesOfAction;
   /** Facts beside the table: stall margins, centre of effort, GZ and so on. */
   readonly facts: readonly { readonly name: string; readonly value: number; readonly unit: string }[];
 }

@@ -154,6 +154,10 @@ export function predictPolar(boat: Boat, request: Partial<PolarRequest> = {}): P
     results,
     bestUp: tws.map((_, i) => optimum(i, 'up')),
     bestDown: tws.map((_, i) => optimum(i, 'down')),
+    sets: sweeps.map((s) => ({
+      name: s.set.sailSet.name,
+      speed: s.outcomes.map((row) => row.map((o) => (o.ok ? o.speed : Number.NaN))),
+    })),
     evaluations,
   };
 }

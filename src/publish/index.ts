@@ -6,14 +6,25 @@ export {
   METHODS,
   type Method,
 } from './cautions.js';
+export { crossoverCsv, crossoverHtml } from './crossover.js';
 export { csvText, POLAR_COLUMNS, polarCsv } from './csv.js';
 export { polarPage } from './html.js';
 export { hullPlanPage } from './hull-plan.js';
-export { balanceJson, boatJson, polarJson } from './json.js';
+export { balanceJson, boatJson, polarJson, sailReportJson } from './json.js';
 export { type LineChart, lineChartSvg } from './line-chart.js';
 export { decimalsFor, fixed, rounded, significant } from './numbers.js';
 export { fileStem, oneLine, terminalText, wrapped } from './plain-text.js';
 export { type BoatFacts, boatFacts, figures, type PolarReport, polarReport } from './report.js';
 export { RESISTANCE_PARTS, type ResistanceReport, resistanceCsv, resistanceReport } from './resistance.js';
-export { balanceText, boatText, cautionText, TEXT_WIDTH, targetTable, warningText } from './text-table.js';
+export { type SailReport, sailReport } from './sail-report.js';
+export { sailChartsHtml, sailCsv, sailPage, sailText } from './sail-view.js';
+export {
+  balanceText,
+  boatText,
+  cautionText,
+  TEXT_WIDTH,
+  targetTable,
+  textTable,
+  warningText,
+} from './text-table.js';
 export { OutputError, type OutputFile, writeFiles } from './write-files.js';

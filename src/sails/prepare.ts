@@ -27,6 +27,8 @@ import { addWindageInto, flowAtInto } from './windage.js';
 const NODES = 16;
 /** The lift of a section acts this share of the chord behind the leading edge (cambered section at work; judgement). */
 const LIFT_CHORD_SHARE = 0.35;
+/** Lift coefficient of a cambered sail section with its chord along the flow (10 % camber; judgement). */
+const CAMBER_LIFT = 0.6;
 /** The separated normal force acts at this share (flat plate square to the flow: half). */
 const NORMAL_CHORD_SHARE = 0.45;
 
@@ -339,9 +341,15 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
         let side = 0;
         let moment = 0;
         const cl = new Float64Array(to - from);
+        const inflow = new Float64Array(to - from);
+        const trim = new Float64Array(to - from);
         for (let i = from; i < to; i++) {
           const gi = priced.x[i]!;
           cl[i - from] = speed[i]! > 0 ? (2 * gi) / (speed[i]! * chord[i]!) : 0;
+          inflow[i - from] = Math.atan2(v[i]!, u[i]!);
+          // Downwash over speed is induced drag over lift at the node.
+          const downwash = gi > 0 ? induced[i]! / (2 * width[i]! * speed[i]! * gi) : 0;
+          trim[i - from] = inflow[i - from]! - downwash - (cl[i - from]! - CAMBER_LIFT) / (2 * Math.PI);
           const lift = rho * width[i]! * speed[i]! * gi;
           const drag = 0.5 * rho * induced[i]!;
           drive += lift * sinB[i]! - drag * cosB[i]!;
@@ -354,6 +362,8 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
           z: z.slice(from, to),
           circulation: priced.x.slice(from, to),
           cl,
+          inflow,
+          trim,
           clLimit: clMax.slice(from, to),
           drive,
           side,
