@@ -12,7 +12,14 @@ export interface Solution {
   /** False when the state balances but is not proven to be the fastest. */
   readonly proven: boolean;
   readonly evaluations: number;
+  /** Curvature of speed over the controls there, for a neighbour's start. */
+  readonly curvature: Float64Array;
 }
+
+/** A state to start from: the vector alone, or with the curvature its own solution ended with. */
+export type Start =
+  | Float64Array
+  | { readonly x: Float64Array; readonly curvature?: Float64Array | undefined };
 
 export interface NoSolution {
   readonly ok: false;
@@ -31,9 +38,12 @@ export interface Solver {
    * @param twa true wind angle from the course [rad]
    * @param starts states to start from (neighbours of the polar); none: the survey finds starts
    */
-  solve(tws: number, twa: number, starts: readonly Float64Array[]): Outcome;
-  /** The same from the given starts alone: no survey when they fail. For second looks. */
-  tryFrom(tws: number, twa: number, starts: readonly Float64Array[]): Outcome;
+  solve(tws: number, twa: number, starts: readonly Start[]): Outcome;
+  /**
+   * The same from the given starts alone: no survey when they fail. For second looks.
+   * @param quick states that only fill a grid: see RunOptions
+   */
+  tryFrom(tws: number, twa: number, starts: readonly Start[], quick?: boolean): Outcome;
 }
 
 function isBalance(a: Attempt): boolean {
@@ -44,11 +54,19 @@ export function createSolver(model: ForceModel): Solver {
   const optimiser = createOptimiser(model);
   const survey = createSurvey(model);
 
-  const search = (tws: number, twa: number, starts: readonly Float64Array[], further: boolean): Outcome => {
+  const search = (
+    tws: number,
+    twa: number,
+    starts: readonly Start[],
+    further: boolean,
+    quick = false,
+  ): Outcome => {
     let evaluations = 0;
     let best: Attempt | undefined;
-    const attempt = (start: Float64Array, most?: number): Attempt => {
-      const a = optimiser.run(tws, twa, start, most);
+    const attempt = (start: Start, mostIterations?: number): Attempt => {
+      const from = start instanceof Float64Array ? { x: start } : start;
+      const options = { mostIterations, quick, curvature: 'curvature' in from ? from.curvature : undefined };
+      const a = optimiser.run(tws, twa, from.x, options);
       evaluations += a.evaluations;
       if (isBalance(a)) {
         if (best === undefined || a.x[X.speed]! > best.x[X.speed]!) best = a;
@@ -58,7 +76,7 @@ export function createSolver(model: ForceModel): Solver {
         for (const f of [0.7, 1.3]) {
           const beside = a.x.slice();
           beside[X.speed]! *= f;
-          const b = optimiser.run(tws, twa, beside, most);
+          const b = optimiser.run(tws, twa, beside, { mostIterations });
           evaluations += b.evaluations;
           if (isBalance(b) && (best === undefined || b.x[X.speed]! > best.x[X.speed]!)) best = b;
         }
@@ -73,6 +91,7 @@ export function createSolver(model: ForceModel): Solver {
       residual: a.residual,
       proven: a.optimal,
       evaluations,
+      curvature: a.curvature,
     });
 
     if (!(tws > 0)) {
@@ -124,7 +143,7 @@ export function createSolver(model: ForceModel): Solver {
   return {
     model,
     solve: (tws, twa, starts) => search(tws, twa, starts, true),
-    tryFrom: (tws, twa, starts) => search(tws, twa, starts, false),
+    tryFrom: (tws, twa, starts, quick) => search(tws, twa, starts, false, quick),
   };
 }
 
