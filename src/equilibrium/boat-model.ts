@@ -45,6 +45,9 @@ const HEEL_OFF_WIND = {
 /** Largest depower value: the price is then 199 over the sails' height, which leaves next to nothing. */
 const DEPOWER_MAX = 0.995;
 
+/** What heel, leeway and trim could add to upright drive or take from upright resistance, with room to spare (judgement). */
+const BOUND_MARGIN = { drive: 1.06, resistance: 0.9 } as const;
+
 /**
  * Forces and moments of a boat under one sail set. Body and course axes as in methods: heading is turned to
  * windward of the course by the leeway; water drag acts along the course, foil lift across it.
@@ -245,6 +248,26 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
     return 4;
   };
 
+  const bare = new Float64Array(AERO.count);
+  const bareHull = new Float64Array(HULL.count);
+  const bareFoils = new Float64Array(FOIL.count);
+  const boundsAt = (tws: number, twa: number, speed: number): { drive: number; resistance: number } => {
+    // Upright at full power drive is largest. Leeway turns the hull, not the sails, but the boom's limit goes with it.
+    flow.tws = tws;
+    flow.twa = twa;
+    flow.speed = speed;
+    flow.leeway = 0;
+    sailSet.evaluateInto(flow, 0, 0, bare);
+    const hullDrag = hull.resistanceInto(speed, 0, bareHull);
+    foils.evaluateInto(speed, 0, 0, 0, spec.boardRange[0], bareFoils);
+    const foilDrag = bareFoils[FOIL.keelProfile]! + bareFoils[FOIL.rudderProfile]!;
+    setWaves(tws, twa);
+    return {
+      drive: (BOUND_MARGIN.drive * Math.max(0, bare[AERO.drive]!) + Math.min(0, bare[AERO.drive]!)) / weight,
+      resistance: (BOUND_MARGIN.resistance * (hullDrag + foilDrag) + forces.waves) / weight,
+    };
+  };
+
   const model: BoatModel = {
     boat,
     sailSet,
@@ -257,6 +280,7 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
     sideConditionsInto,
     sideConditionNames: ['keel lift', 'rudder lift'],
     jacobianInto,
+    boundsAt,
     price,
   };
   return model;

@@ -11,7 +11,14 @@ export {
   stateVector,
 } from './boat-solver.js';
 export { type Attempt, createOptimiser, finiteDifferenceJacobian, type Optimiser } from './optimise.js';
-export { createSolver, type NoSolution, type Outcome, type Solution, type Solver } from './solve.js';
+export {
+  createSolver,
+  type NoSolution,
+  type Outcome,
+  type Solution,
+  type Solver,
+  type Start,
+} from './solve.js';
 export { createSurvey, type Survey, type SurveyPoint } from './survey.js';
 export {
   type Bounds,

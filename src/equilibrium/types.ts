@@ -48,6 +48,11 @@ export interface ForceModel {
    */
   readonly sideConditions: number;
   sideConditionsInto(out: Float64Array): void;
+  /**
+   * Optional bounds that no heel, trim, leeway or easing can beat, at a speed [m/s]: most drive and least resistance, over
+   * weight. They prove "no drive" cheaply where even the bounds leave none.
+   */
+  boundsAt?(tws: number, twa: number, speed: number): { readonly drive: number; readonly resistance: number };
   /** Names of the side conditions, for reports. */
   readonly sideConditionNames: readonly string[];
   /**
@@ -105,6 +110,11 @@ export interface SailingState {
   readonly residual: number;
   readonly evaluations: number;
   readonly notes: readonly string[];
+  /**
+   * Speed [m/s] of a slower state in which the same boat also stays at this wind and angle: she can stay planing, but may
+   * not get there by herself. Left out where none is known.
+   */
+  readonly slowerSpeed?: number | undefined;
 }
 
 export interface NoState {

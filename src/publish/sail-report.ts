@@ -1,5 +1,6 @@
 import type { Boat } from '../boat/index.js';
 import {
+  prepareSailSet,
   priceFor,
   type SailCoefficients,
   type SailLoading,
@@ -39,13 +40,18 @@ export function sailReport(boat: Boat, angles: readonly number[] = ANGLES.map(ra
   return {
     boat: boat.spec.name,
     lwl: boat.spec.hull.dimensions.lwl,
-    sets: boat.sailSets.map((set) => ({
+    sets: boat.sailSets.map(drawn).map((set) => ({
       name: set.name,
       area: set.area,
       rows: sailCoefficients(set, angles),
       loadings: [UPWIND, REACH].flatMap((wind) => KEPT.map((kept) => loadingAt(set, wind, kept))),
     })),
   };
+}
+
+/** The same set with as many nodes as a drawing wants; one given by coefficients stays as it is. */
+function drawn(set: SailSet): SailSet {
+  return set.spec.sails.length > 0 ? prepareSailSet(set.spec, 24) : set;
 }
 
 function loadingAt(set: SailSet, wind: typeof UPWIND | typeof REACH, kept: number): LoadingReport {

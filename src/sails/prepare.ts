@@ -23,8 +23,8 @@ import { profileAt, sailArea } from './shapes.js';
 import { AERO, type SailLoading, type SailSet, type SailSetSpec } from './types.js';
 import { addWindageInto, flowAtInto } from './windage.js';
 
-/** Nodes per sail: drive within 0.4 % and side force within 1.2 % of six times as many. */
-const NODES = 16;
+/** Nodes per sail in the solver: drive and side force within 0.5 % of ten times as many (see the accuracy table). */
+const NODES = 10;
 /** The lift of a section acts this share of the chord behind the leading edge (cambered section at work; judgement). */
 const LIFT_CHORD_SHARE = 0.35;
 /** Lift coefficient of a cambered sail section with its chord along the flow (10 % camber; judgement). */
@@ -88,8 +88,9 @@ function bestIncidence(p1: number, p2: number, lowest: number): number {
  * convex problem over the true wind profile (see lifting-line/loading.ts); heel enters by the effective angle
  * (Kerwin 1978). Off the wind the attached family is held at 76 deg and blends into the separated branch
  * (Viterna & Corrigan 1981 for the normal force) as the boom reaches its limit.
+ * @param nodes of each sail's lifting line: more of them for drawings
  */
-export function prepareSailSet(spec: SailSetSpec): SailSet {
+export function prepareSailSet(spec: SailSetSpec, nodes = NODES): SailSet {
   if (spec.sails.length === 0) throw new RangeError(`sail set "${spec.name}" has no sail`);
   const sails = spec.sails;
   const geometry = sails.map(sailArea);
@@ -98,7 +99,7 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
   const centreZ = geometry.reduce((s, g) => s + g.area * g.z, 0) / area;
   const problem = prepareLoading(
     sails.map((s) => ({
-      line: wakeLine(s.z[0]!, s.z[s.z.length - 1]!, NODES),
+      line: wakeLine(s.z[0]!, s.z[s.z.length - 1]!, nodes),
       chordAt: (z: number) => profileAt(s.z, s.chord, z),
       k: s.section.k,
       cl0: s.section.cl0,
