@@ -31,6 +31,18 @@ export interface BoatModel extends ForceModel {
   price(depower: number): number;
 }
 
+/** Controls held where they are put instead of being chosen. */
+export interface HeldControls {
+  /** Heel [rad], to leeward positive. */
+  readonly heel?: number | undefined;
+  /** Crew's arm as a share of fully out, -1 to 1. */
+  readonly crewShare?: number | undefined;
+  /** Share of the board lowered. */
+  readonly boardDown?: number | undefined;
+  /** The solver's own depower value; reports speak of `ease`. */
+  readonly depower?: number | undefined;
+}
+
 /** Lowest heel [rad] offered to the solver: a little to windward. Judgement. */
 const HEEL_TO_WINDWARD = (-5 * Math.PI) / 180;
 /**
@@ -52,7 +64,7 @@ const BOUND_MARGIN = { drive: 1.06, resistance: 0.9 } as const;
  * Forces and moments of a boat under one sail set. Body and course axes as in methods: heading is turned to
  * windward of the course by the leeway; water drag acts along the course, foil lift across it.
  */
-export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
+export function createBoatModel(boat: Boat, sailSet: SailSet, held: HeldControls = {}): BoatModel {
   const { spec, hull, foils, mass } = boat;
   const g = spec.gravity;
   const weight = mass * g;
@@ -90,10 +102,19 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
   limit(X.arm, spec.crew.armLee, spec.crew.armOut);
 
   limit(X.hoist, spec.boardRange[0], spec.boardRange[1]);
-  const hoists = spec.boardRange[0] < spec.boardRange[1];
+  const hoists = spec.boardRange[0] < spec.boardRange[1] && held.boardDown === undefined;
+
+  if (held.heel !== undefined) limit(X.heel, held.heel, held.heel);
+  if (held.boardDown !== undefined) limit(X.hoist, held.boardDown, held.boardDown);
+  if (held.depower !== undefined) limit(X.depower, held.depower, held.depower);
+  if (held.crewShare !== undefined) {
+    const arm = held.crewShare * (held.crewShare >= 0 ? spec.crew.armOut : -spec.crew.armLee);
+    limit(X.arm, arm, arm);
+  }
 
   const heelLimit = upper[X.heel]!;
   const prepare = (_tws: number, twa: number): void => {
+    if (held.heel !== undefined) return;
     const t = Math.min(
       1,
       Math.max(0, (twa - HEEL_OFF_WIND.start) / (HEEL_OFF_WIND.end - HEEL_OFF_WIND.start)),

@@ -4,6 +4,7 @@ export {
   createSetSolvers,
   describeOutcome,
   describeState,
+  type Held,
   otherSide,
   type SetSolver,
   solveAlone,

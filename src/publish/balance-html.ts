@@ -1,8 +1,9 @@
 import type { ForceBalance } from '../equilibrium/index.js';
 import { escapeHtml } from './escape.js';
 import { fixed } from './numbers.js';
+import { staticPage } from './page-shell.js';
 import { oneLine } from './plain-text.js';
-import { figures, type StateFigures } from './report.js';
+import { type BoatFacts, figures, type StateFigures } from './report.js';
 
 const WIDTH = 360;
 const HEIGHT = 320;
@@ -196,4 +197,14 @@ export function balanceHtml(balance: ForceBalance, id: string): string {
     0.4 * high,
   )}</div>
 <details><summary>${escapeHtml(caption)}</summary><div class="scroll" tabindex="0" role="region" aria-label="${escapeHtml(caption)}"><table><caption>${escapeHtml(caption)}</caption><thead><tr><th scope="col">from</th><th scope="col">forward, N</th><th scope="col">to leeward, N</th><th scope="col">heeling, N m</th><th scope="col">bow to windward, N m</th></tr></thead><tbody>${rows}</tbody></table></div></details>`;
+}
+
+/** One state's balance as a page of its own. */
+export function balancePage(boat: BoatFacts, balance: ForceBalance): string {
+  const f = figures(balance.state) as StateFigures;
+  return staticPage({
+    title: `${oneLine(boat.name)}: balance of forces`,
+    lead: `True wind ${fixed(f.twsKn, 1)} kn at ${fixed(f.twaDeg, 1)} deg from the course.`,
+    sections: [{ id: 'balance', heading: 'Balance', html: balanceHtml(balance, 'balance') }],
+  });
 }

@@ -1,3 +1,4 @@
+export { balancePage } from './balance-html.js';
 export {
   CAUTIONS,
   ERROR_BANDS,
@@ -8,6 +9,7 @@ export {
 } from './cautions.js';
 export { crossoverCsv, crossoverHtml } from './crossover.js';
 export { csvText, POLAR_COLUMNS, polarCsv } from './csv.js';
+export { heldText } from './held-text.js';
 export { polarPage } from './html.js';
 export { hullPlanPage } from './hull-plan.js';
 export { balanceJson, boatJson, polarJson, sailReportJson } from './json.js';

@@ -33,6 +33,9 @@ function state(r: SailingResult): Json {
     sails: f.sailSet,
     regime: f.regime,
     notes: f.notes,
+    ...(r.status === 'balanced' && r.slowerSpeed !== undefined
+      ? { slower_state_kn: rounded(toKnots(r.slowerSpeed)) }
+      : {}),
   };
 }
 
@@ -89,13 +92,20 @@ export function boatJson(facts: BoatFacts): string {
 }
 
 /** One state with its forces and moments, or why there is none. */
-export function balanceJson(facts: BoatFacts, result: SailingResult, balance?: ForceBalance): string {
+export function balanceJson(
+  facts: BoatFacts,
+  result: SailingResult,
+  balance?: ForceBalance,
+  free?: SailingResult,
+): string {
   return text({
     content: 'force balance',
     version: 1,
     boat: facts.name,
     state: state(result),
+    ...(free && { free_state: state(free) }),
     ...(balance && {
+      lead_m: rounded(balance.lines.lead),
       rows: balance.rows.map((r) => ({
         group: r.group,
         name: r.name,
