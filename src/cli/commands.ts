@@ -143,6 +143,48 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
       });
     },
   },
+  targets: {
+    usage: 'targets <boat>',
+    describe: 'target speeds for the coach: table, CSV, and cards for printing',
+    examples: [
+      'polarwright targets boats/keelboat.yaml',
+      'polarwright targets mine.yaml --tws 6:18:2 --reach 60,90,120 --paper A6',
+      'polarwright targets mine.yaml --unit m/s --sea-percent 96 --crew-percent 95 --label "first season"',
+    ],
+    positional: BOAT,
+    options: {
+      tws: { type: 'string', describe: 'true wind speeds, in the unit: a list 4,6,8 or a range 4:20:2' },
+      reach: { type: 'string', describe: 'true wind angles for reaching, deg: likewise' },
+      unit: { type: 'string', describe: 'unit of speeds', choices: ['kn', 'm/s'], default: 'kn' },
+      'sea-percent': { type: 'string', describe: 'what the sea leaves of the predicted speed, %' },
+      'crew-percent': { type: 'string', describe: 'what the crew get of the predicted speed, %' },
+      label: { type: 'string', describe: 'a line of your own on every card' },
+      paper: { type: 'string', describe: 'paper of the cards', choices: ['A5', 'A6'], default: 'A5' },
+      percents: { type: 'boolean', describe: 'print the helper tables, percent of target', default: false },
+      'boat-speed': { type: 'string', describe: 'print a boat speed in percent of every target' },
+      decimals: { type: 'string', describe: 'decimals of speeds, 0 to 6 (2)' },
+      out: { type: 'string', describe: 'folder to write to', default: 'reports' },
+      json: { ...JSON_OPTION, describe: 'print the targets as JSON, and write no files' },
+    },
+    run: async (argv) => {
+      const { targetsCommand } = await import('./targets-command.js');
+      targetsCommand({
+        boat: file(argv.boat),
+        tws: text(argv.tws),
+        reach: text(argv.reach),
+        unit: argv.unit === 'm/s' ? 'm/s' : 'kn',
+        seaPercent: text(argv['sea-percent']),
+        crewPercent: text(argv['crew-percent']),
+        label: text(argv.label),
+        paper: argv.paper === 'A6' ? 'A6' : 'A5',
+        decimals: text(argv.decimals),
+        percents: argv.percents === true,
+        boatSpeed: text(argv['boat-speed']),
+        out: String(argv.out),
+        json: argv.json === true,
+      });
+    },
+  },
 };
 
 /** Options every command knows. */
