@@ -20,6 +20,15 @@ export { type BoatFacts, boatFacts, figures, type PolarReport, polarReport } fro
 export { RESISTANCE_PARTS, type ResistanceReport, resistanceCsv, resistanceReport } from './resistance.js';
 export { looksLikeJson, readSignalKPolar, SIGNAL_K_VERSION, signalKPolar } from './signal-k.js';
 export * from './table-format.js';
+export {
+  deratingText,
+  differencesCsv,
+  differencesText,
+  fillingRules,
+  readingText,
+  tableDescription,
+  tablePage,
+} from './table-text.js';
 export { type PercentTable, percentTable, type TargetCard, targetCard } from './targets.js';
 export { CARD_PAPERS, type CardPaper, targetsCardPage } from './targets-card.js';
 export { percentCsv, type TargetStyle, targetsCsv, targetsJson, targetsText } from './targets-text.js';

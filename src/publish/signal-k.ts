@@ -58,7 +58,11 @@ export function signalKPolar(table: SpeedTable, description: string): string {
       [vessel]: { uuid: vessel, name, performance: { polars: { [id]: polar }, activePolar: id } },
     },
   };
-  return `${JSON.stringify(document, null, 1).replace(/\[\s+([^[\]{}]*?)\s+\]/g, (_, inner: string) => `[${inner.replace(/\s+/g, ' ')}]`)}\n`;
+  // Pairs and triples of numbers on one line each; texts hold no line breaks and stay as they are.
+  const json = JSON.stringify(document, null, 1).replace(/\[\n([\d\s.,e-]+?)\n\s*\]/g, (_, inner: string) => {
+    return `[${inner.trim().replace(/\s+/g, ' ')}]`;
+  });
+  return `${json}\n`;
 }
 
 const speed = z.number().min(0).max(60);
@@ -191,5 +195,5 @@ export function readSignalKPolar(text: string, file: string): TableReading {
   };
 }
 
-/** Reads a table in either form: JSON begins with a brace. @throws TableFileError */
+/** True where a text is the JSON form of a table: it begins with a brace. */
 export const looksLikeJson = (text: string): boolean => /^\ufeff?\s*\{/.test(text);
