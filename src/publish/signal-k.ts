@@ -27,10 +27,8 @@ function windData(row: SpeedRow) {
     trueWindSpeed: plain(row.tws),
     ...(row.beat && { optimalBeats: [pair(row.beat)] }),
     ...(row.gybe && { optimalGybes: [pair(row.gybe)] }),
-    angleData: row.points.map((p): [number, number, number] => [
-      ...pair(p),
-      plain(p.speed * Math.cos(p.twa)),
-    ]),
+    // VMG of the printed figures, so that it can be checked in the file.
+    angleData: row.points.map(pair).map(([twa, speed]) => [twa, speed, plain(speed * Math.cos(twa))]),
   };
 }
 
