@@ -13,8 +13,10 @@ export type CardPaper = keyof typeof CARD_PAPERS;
 
 /** Margin [mm] most printers keep to, and room for a laminating seam (judgement). */
 const MARGIN = 5;
-/** Winds and reaching angles that fit a card in large type. */
+/** Winds and reaching angles that fit a card in large type; fewer winds where many sail sets have to be named. */
 const WINDS = 9;
+const WINDS_MANY_SAILS = 7;
+const MANY_SAILS = 6;
 const ANGLES = 6;
 
 const SHORT_CAUTION =
@@ -73,9 +75,11 @@ function bestVmgTable(winds: TargetCard['winds'], course: 'up' | 'down', unit: S
     head('', 'AWA', 'crew'),
     head('', 'heel', board ? 'board' : ''),
   ];
-  const key = [...letters].map(([set, letter]) => `${letter} ${shortened(oneLine(set), 32)}`).join(' · ');
-  return `<table class="vmg"><thead><tr>${heads.join('')}</tr></thead><tbody>${rows.join('')}</tbody></table>
-<p class="key">Sails: ${escapeHtml(key)}</p>`;
+  const key = [...letters].map(
+    ([set, letter]) => `<span>${letter} ${escapeHtml(shortened(oneLine(set), 60))}</span>`,
+  );
+  const sails = key.length === 0 ? '' : `<p class="key${key.length > 4 ? ' many' : ''}">${key.join(' ')}</p>`;
+  return `<table class="vmg"><thead><tr>${heads.join('')}</tr></thead><tbody>${rows.join('')}</tbody></table>${sails}`;
 }
 
 function reachTable(
@@ -97,7 +101,6 @@ function reachTable(
 
 function percentTableHtml(card: TargetCard, course: 'up' | 'down', unit: SpeedUnit): string {
   const t = percentTable(card, course);
-  if (t.tws.length === 0) return '<p>No targets.</p>';
   const heads = t.tws.map((v) => th(fixed(speedIn(unit, v), 1))).join('');
   const rows = t.rows.map((r) => {
     const cells = r.speeds.map((v) => `<td>${threeFigures(speedIn(unit, v))}</td>`);
@@ -142,15 +145,17 @@ table { width: 100%; border-collapse: collapse; table-layout: fixed; font-varian
 th, td { text-align: right; padding: 0 ${mm(0.008)}; white-space: nowrap; overflow: hidden; }
 thead th { font-size: ${mm(0.03)}; border-bottom: ${mm(0.003)} solid #000; vertical-align: bottom; }
 thead small { display: block; font-weight: 400; }
-.vmg td, .vmg tbody th, .reach td, .reach tbody th { font-size: ${mm(0.045)}; line-height: 1.2; }
+.vmg td, .vmg tbody th, .reach td, .reach tbody th { font-size: ${mm(0.045)}; line-height: 1.14; }
 .vmg tbody th, .reach tbody th { vertical-align: top; border-right: ${mm(0.003)} solid #000; }
 .main { font-weight: 700; }
 .vmg .more td { font-size: ${mm(0.031)}; line-height: 1.15; padding-bottom: ${mm(0.006)}; border-bottom: ${mm(0.0015)} solid #000; }
 .vmg .more td:first-child:not(.none) { border-right: ${mm(0.003)} solid #000; }
 thead span { font-weight: 400; }
-.key { margin: ${mm(0.012)} 0; font-size: ${mm(0.028)}; max-height: ${mm(0.11)}; overflow: hidden; }
+.key { margin: ${mm(0.01)} 0 0; font-size: ${mm(0.028)}; }
+.key span { display: inline-block; max-width: 49%; margin-right: 2%; overflow: hidden; text-overflow: ellipsis; white-space: nowrap; vertical-align: bottom; }
+.key.many span { max-width: 31%; }
 .reach tbody td, .reach tbody th { padding-top: ${mm(0.014)}; padding-bottom: ${mm(0.014)}; border-bottom: ${mm(0.0015)} solid #000; }
-.vmg td.none { text-align: left; }
+.vmg td.none { text-align: left; text-overflow: ellipsis; }
 .vmg th:first-child, .reach th:first-child { width: 15%; }
 .reach td.none { font-size: ${mm(0.024)}; white-space: normal; }
 .percent th, .percent td { font-size: ${mm(0.036)}; line-height: 1.36; padding: 0 ${mm(0.006)}; }
@@ -180,6 +185,11 @@ export function targetsCardPage(card: TargetCard, unit: SpeedUnit, paper: CardPa
       ? ''
       : ` ${percent(card.share)} of prediction (${card.shares.map((s) => `${s.what} ${percent(s.share)}`).join(', ')}).`;
   const windGroups = pieces(card.winds, WINDS);
+  const vmgGroups = (course: 'up' | 'down') =>
+    windGroups.some((g) => sailLetters(g.map((w) => w[course])).size > MANY_SAILS)
+      ? pieces(card.winds, WINDS_MANY_SAILS)
+      : windGroups;
+  const aimed = (course: 'up' | 'down') => windGroups.filter((g) => g.some((w) => w[course].ok));
   const angleGroups = pieces(
     card.reachAngles.map((at, k) => ({ at, k })),
     ANGLES,
@@ -194,17 +204,17 @@ export function targetsCardPage(card: TargetCard, unit: SpeedUnit, paper: CardPa
       html: html(g),
     }));
   const cards = [
-    ...numbered('Upwind', windGroups, (g) => bestVmgTable(g, 'up', unit)),
-    ...numbered('Downwind', windGroups, (g) => bestVmgTable(g, 'down', unit)),
+    ...numbered('Upwind', vmgGroups('up'), (g) => bestVmgTable(g, 'up', unit)),
+    ...numbered('Downwind', vmgGroups('down'), (g) => bestVmgTable(g, 'down', unit)),
     ...numbered(
       'Reaching',
       angleGroups.flatMap((a) => windGroups.map((w) => ({ a, w }))),
       ({ a, w }) => reachTable(w, a, unit),
     ),
-    ...numbered('Percent of target, up', windGroups, (winds) =>
+    ...numbered('Percent of target, up', aimed('up'), (winds) =>
       percentTableHtml({ ...card, winds }, 'up', unit),
     ),
-    ...numbered('Percent of target, down', windGroups, (winds) =>
+    ...numbered('Percent of target, down', aimed('down'), (winds) =>
       percentTableHtml({ ...card, winds }, 'down', unit),
     ),
     { title: 'How to read the cards', html: `<div class="reading">${reading(card)}</div>` },
