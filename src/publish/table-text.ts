@@ -61,15 +61,18 @@ export function fillingRules(complete: CompleteTable, completion: Completion, un
 export function deratingText(completion: Completion, unit: SpeedUnit): string {
   const { share, byWind } = completion.derating;
   const p = (s: number): string => `${Number((100 * s).toFixed(1))} %`;
-  const parts = [
-    ...(share === 1 ? [] : [`${p(share)} of the predicted speed in every wind`]),
-    ...(byWind.length === 0
+  const everywhere = share === 1 ? [] : [`Speeds are ${p(share)} of the predicted ones in every wind`];
+  const points = byWind
+    .map((w) => `${significant(speedIn(unit, w.tws), 4)} ${unit} ${p(w.share)}`)
+    .join(', ');
+  const byPoints =
+    byWind.length === 0
       ? []
       : [
-          `by wind speed ${byWind.map((w) => `${significant(speedIn(unit, w.tws), 4)} ${unit} ${p(w.share)}`).join(', ')}, straight lines between`,
-        ]),
-  ];
-  return parts.length === 0 ? '' : `Speeds are ${parts.join('; times ')}.`;
+          `${share === 1 ? 'Speeds are a share of the predicted ones' : 'times a share'} by wind speed: ${points}; straight lines between`,
+        ];
+  const parts = [...everywhere, ...byPoints];
+  return parts.length === 0 ? '' : `${parts.join(', ')}.`;
 }
 
 /** What a table was read as. */
