@@ -22,7 +22,7 @@ describe('the README', () => {
   });
 
   it('shows at least one use of every command', () => {
-    for (const c of ['polar', 'explain', 'check', 'new']) {
+    for (const c of ['polar', 'explain', 'check', 'new', 'targets', 'export', 'table']) {
       expect(
         commands.some((line) => line.startsWith(c)),
         c,

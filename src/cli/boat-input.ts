@@ -13,7 +13,7 @@ function unitEngine(): UnitEngine {
   return engine;
 }
 
-function standardInput(): Uint8Array {
+export function standardInput(): Uint8Array {
   try {
     return readFileSync(0);
   } catch (error) {

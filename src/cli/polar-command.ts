@@ -17,8 +17,7 @@ import {
 } from '../publish/index.js';
 import { fromKnots, radians } from '../units/index.js';
 import { loadBoat, reportName } from './boat-input.js';
-import { UsageError } from './errors.js';
-import { readList, WIND_ANGLES, WIND_SPEEDS } from './grid.js';
+import { readDecimals, readList, WIND_ANGLES, WIND_SPEEDS } from './grid.js';
 import { print, printRaw } from './output.js';
 
 export interface PolarArguments {
@@ -29,13 +28,6 @@ export interface PolarArguments {
   readonly json: boolean;
   readonly quiet: boolean;
   readonly decimals: string | undefined;
-}
-
-function readDecimals(text: string | undefined): number | undefined {
-  if (text === undefined) return undefined;
-  if (!/^[0-6]$/.test(text.trim()))
-    throw new UsageError(`--decimals: "${text}" is not a whole number from 0 to 6`);
-  return Number(text);
 }
 
 /** Predicts the polar, writes its files, prints the targets. */

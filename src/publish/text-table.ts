@@ -7,7 +7,7 @@ import { type BoatFacts, figures, type PolarReport, type StateFigures } from './
 /** Widest line of any table for the terminal. */
 export const TEXT_WIDTH = 100;
 
-interface Column {
+export interface Column {
   readonly head: string;
   readonly unit: string;
   readonly left?: boolean;
