@@ -58,6 +58,9 @@ const CONTROLS = [X.heel, X.depower, X.hoist] as const;
 const CURVATURE = [3, 1, 0.3] as const;
 const LONGEST = [0.25, 0.5, 0.4] as const;
 const SMALL_STEP = 3e-3;
+/** Most curvature a run may build up, and take over from a neighbour, over the first guess. */
+const MOST_CURVATURE = 50;
+const MOST_INHERITED = 5;
 /** Ties are broken towards full power, upright and the board down by this share of speed: far below any shown digit. */
 const TIE = 1e-6;
 const RESIDUAL_TOLERANCE = 1e-10;
@@ -146,6 +149,23 @@ export function createOptimiser(model: ForceModel): Optimiser {
   /** Length of the crew's reach; a held arm still needs a scale. */
   const armScale = (): number => Math.max(1e-3, upper[X.arm]! - lower[X.arm]!);
 
+  /**
+   * Keeps the curvature within so many times its first guess. At a kink BFGS sees a wall in a corner; a matrix that grew
+   * without bound would stop the search anywhere, and call it the end.
+   */
+  const capCurvature = (most: number): void => {
+    for (let i = 0; i < nc; i++) {
+      const top = most * CURVATURE[i]!;
+      const own = curvature[4 * i]!;
+      if (own <= top) continue;
+      const f = Math.sqrt(top / own);
+      for (let j = 0; j < nc; j++) {
+        curvature[3 * i + j]! *= f;
+        curvature[3 * j + i]! *= f;
+      }
+    }
+  };
+
   /** The small programme for the first m limits, the first `soft` of which may give way when there is no room. */
   const solveStep = (m: number, soft: number, rho: number): void => {
     for (let i = 0; i < nc; i++) {
@@ -195,7 +215,10 @@ export function createOptimiser(model: ForceModel): Optimiser {
     curvature.fill(0);
     if (options.curvature === undefined) {
       for (let i = 0; i < nc; i++) curvature[4 * i] = CURVATURE[i]! * x[X.speed]!;
-    } else curvature.set(options.curvature);
+    } else {
+      curvature.set(options.curvature);
+      capCurvature(MOST_INHERITED * x[X.speed]!);
+    }
     let haveOld = false;
     let iterations = 0;
     let converged = false;
@@ -310,6 +333,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
             for (let j = 0; j < nc; j++)
               curvature[3 * i + j]! += (y[i]! * y[j]!) / sy - (bs[i]! * bs[j]!) / sbs;
         }
+        capCurvature(MOST_CURVATURE * speed);
         const floor = 1e-5 * speed;
         for (let i = 0; i < nc; i++) if (!(curvature[4 * i]! > floor)) curvature[4 * i] = floor;
         for (let i = 0; i < nc; i++)
