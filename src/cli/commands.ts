@@ -89,12 +89,20 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
     describe: 'show every force and moment at one state',
     examples: [
       'polarwright explain boats/keelboat.yaml --tws 12 --twa 45',
+      'polarwright explain mine.yaml --tws 12 --twa 45 --heel 8 --crew-mass 83',
       'polarwright explain mine.yaml --tws 12 --twa 45 --json',
     ],
     positional: BOAT,
     options: {
       tws: { type: 'string', describe: 'true wind speed, kn', demandOption: true },
       twa: { type: 'string', describe: 'true wind angle from the course, deg', demandOption: true },
+      heel: { type: 'string', describe: 'hold her at this heel, deg (to windward negative)' },
+      crew: { type: 'string', describe: 'hold the crew at this share of fully out, -1 to 1' },
+      ease: { type: 'string', describe: 'give up this share of the heeling moment, 0 to 0.95' },
+      board: { type: 'string', describe: 'hold this share of the board down' },
+      sails: { type: 'string', describe: 'keep to the sail set of this name' },
+      'crew-mass': { type: 'string', describe: 'sail with a crew of this mass together, kg' },
+      out: { type: 'string', describe: 'folder to write a page with a sketch of the balance to' },
       json: JSON_OPTION,
     },
     run: async (argv) => {
@@ -103,6 +111,13 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
         boat: file(argv.boat),
         tws: String(argv.tws),
         twa: String(argv.twa),
+        heel: text(argv.heel),
+        crew: text(argv.crew),
+        ease: text(argv.ease),
+        board: text(argv.board),
+        sails: text(argv.sails),
+        crewMass: text(argv['crew-mass']),
+        out: text(argv.out),
         json: argv.json === true,
       });
     },
@@ -126,6 +141,20 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
     run: async (argv) => {
       const { checkCommand } = await import('./check-command.js');
       checkCommand({ boat: file(argv.boat), json: argv.json === true, plot: text(argv.plot) });
+    },
+  },
+  sails: {
+    usage: 'sails <boat>',
+    describe: 'show what each sail set gives over apparent wind angle, and how it is loaded',
+    examples: ['polarwright sails boats/keelboat.yaml', 'polarwright sails mine.yaml --out reports'],
+    positional: BOAT,
+    options: {
+      out: { type: 'string', describe: 'folder to write a page and a table (CSV) to' },
+      json: JSON_OPTION,
+    },
+    run: async (argv) => {
+      const { sailsCommand } = await import('./sails-command.js');
+      sailsCommand({ boat: file(argv.boat), json: argv.json === true, out: text(argv.out) });
     },
   },
   new: {

@@ -142,3 +142,13 @@ export function readOne(text: string, allowed: Allowed): number {
   const { values, factor } = withoutUnit(text, allowed);
   return inRange(plainNumber(values, allowed) * factor, allowed);
 }
+
+/** Shares, and the mass of a whole crew. */
+export const SHARES: Allowed = { option: '', unit: '', least: 0, most: 1, others: {} };
+export const CREW_MASS: Allowed = {
+  option: '--crew-mass',
+  unit: 'kg',
+  least: 25,
+  most: 4000,
+  others: { kg: 1, lb: 0.45359237 },
+};

@@ -2,6 +2,7 @@ import { join } from 'node:path';
 import { predictPolar } from '../polar/index.js';
 import {
   cautionText,
+  crossoverCsv,
   fileStem,
   polarCsv,
   polarJson,
@@ -44,12 +45,21 @@ export function polarCommand(a: PolarArguments): void {
   const stem = fileStem(reportName(a.boat, boat));
   const files = writeFiles(a.out, [
     { name: `${stem}-polar.csv`, content: polarCsv(report, decimals) },
+    ...(polar.sets.length > 1
+      ? [{ name: `${stem}-crossover.csv`, content: crossoverCsv(polar, decimals) }]
+      : []),
     { name: `${stem}-resistance.csv`, content: resistanceCsv(report.resistance, decimals) },
     { name: `${stem}-results.json`, content: polarJson(report) },
     { name: `${stem}-page.html`, content: polarPage(report, decimals) },
   ]);
   if (a.quiet) return;
-  const what = ['polar table', 'resistance', 'results', 'page'];
+  const what = [
+    'polar table',
+    ...(polar.sets.length > 1 ? ['crossover'] : []),
+    'resistance',
+    'results',
+    'page',
+  ];
   const places = files.map((f, i) => `${what[i]!.padEnd(11)}  ${join(f)}`);
   const { warnings } = report.boat;
   const beyond = warnings.map((w) => wrapped(`- ${warningText(w)}`, TEXT_WIDTH, '  '));

@@ -13,6 +13,7 @@ export {
   type FilledCell,
   PLAIN_COMPLETION,
 } from './complete-table.js';
+export { type CrossoverCell, crossover } from './crossover.js';
 export { defaultWindAngles, defaultWindSpeeds, predictPolar } from './predict.js';
 export {
   commonAngles,

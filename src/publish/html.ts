@@ -2,7 +2,9 @@ import { createHash } from 'node:crypto';
 import { readFileSync } from 'node:fs';
 import { createRequire } from 'node:module';
 import type { SailingResult } from '../equilibrium/index.js';
+import { balanceHtml } from './balance-html.js';
 import { CAUTIONS, ERROR_BANDS, ERROR_BANDS_SOURCE, METHODS } from './cautions.js';
+import { crossoverHtml } from './crossover.js';
 import { escapeHtml } from './escape.js';
 import { type Decimals, decimalsFor, fixed, rounded, significant } from './numbers.js';
 import { PAGE_SCRIPT } from './page-script.js';
@@ -10,6 +12,8 @@ import { PAGE_STYLE } from './page-style.js';
 import { fileStem, oneLine } from './plain-text.js';
 import { figures, type PolarReport, type StateFigures } from './report.js';
 import { resistanceHtml } from './resistance.js';
+import { rightingHtml } from './righting.js';
+import { sailChartsHtml } from './sail-view.js';
 import { COLOURS, seriesStyle } from './series-style.js';
 
 /** A value as JSON that may stand in a script element. */
@@ -316,6 +320,7 @@ export function polarPage(report: PolarReport, decimals = 2): string {
   const name = escapeHtml(oneLine(boat.name));
   const note = oneLine(boat.note);
   const height = significant(polar.windHeight, 3);
+  const sails = sailChartsHtml(report.sails);
   return `<!doctype html>
 <html lang="en">
 <head>
@@ -333,7 +338,7 @@ export function polarPage(report: PolarReport, decimals = 2): string {
 <h1>${name}</h1>
 <p>Predicted speeds in true winds of ${escapeHtml(polar.tws.map((_, i) => fixed(figures(polar.bestUp[i]!).twsKn, 1).replace(/\.0$/, '')).join(', '))} kn at ${height} m above flat water.</p>
 ${note === '' ? '' : `<p class="soft note">${escapeHtml(note)}</p>`}
-<nav aria-label="Parts of this page"><a href="#diagram">diagram</a><a href="#targets">best VMG</a><a href="#states">all states</a><a href="#resistance">resistance</a><a href="#boat">the boat</a><a href="#trust">how far to trust it</a><a href="#methods">methods</a><a href="#cautions">cautions</a></nav>
+<nav aria-label="Parts of this page"><a href="#diagram">diagram</a><a href="#targets">best VMG</a><a href="#states">all states</a>${polar.sets.length > 1 ? '<a href="#crossover">which sails when</a>' : ''}<a href="#balance">forces</a><a href="#righting-moment">righting moment</a><a href="#sails">sails</a><a href="#resistance">resistance</a><a href="#boat">the boat</a><a href="#trust">how far to trust it</a><a href="#methods">methods</a><a href="#cautions">cautions</a></nav>
 </header>
 <main>
 <div class="pair">
@@ -361,6 +366,28 @@ ${targetHtml('To leeward', polar.bestDown, d)}
 <section id="states" aria-labelledby="states-title">
 <h2 id="states-title">All states, by wind speed</h2>
 ${polar.tws.map((_, i) => fullTable(report, i, d)).join('\n')}
+</section>
+${
+  polar.sets.length > 1
+    ? `<section id="crossover" aria-labelledby="crossover-title">
+<h2 id="crossover-title">Which sails when</h2>
+${crossoverHtml(polar)}
+</section>`
+    : ''
+}
+<section id="balance" aria-labelledby="balance-title">
+<h2 id="balance-title">Balance of forces</h2>
+${report.balances.map((b, i) => balanceHtml(b, `balance-${i}`)).join('\n')}
+</section>
+<section id="righting-moment" aria-labelledby="righting-title">
+<h2 id="righting-title">Righting moment</h2>
+${rightingHtml(report.righting)}
+</section>
+<section id="sails" aria-labelledby="sails-title">
+<h2 id="sails-title">The sails</h2>
+<p class="soft">Coefficients on each set's own area, upright, at full power, by apparent wind angle.</p>
+${sails.coefficients}
+${sails.loadings}
 </section>
 <section id="resistance" aria-labelledby="resistance-title">
 <h2 id="resistance-title">Resistance of the hull</h2>

@@ -14,7 +14,7 @@ import { staticPage } from './page-shell.js';
 import { oneLine, shortened, wrapped } from './plain-text.js';
 import type { ReadingNote } from './read-table.js';
 import { type SpeedUnit, speedIn, unitSuffix } from './table-format.js';
-import { TEXT_WIDTH, table } from './text-table.js';
+import { TEXT_WIDTH, textTable } from './text-table.js';
 
 const signed = (v: number, decimals: number): string => {
   const text = fixed(v, decimals);
@@ -83,7 +83,7 @@ export function readingText(name: string, t: SpeedTable, notes: readonly Reading
   return [
     `${shortened(oneLine(name), 60)}: ${t.rows.length} wind speeds, ${count} angles each`,
     '',
-    table(
+    textTable(
       [
         { head: 'read as', unit: '', left: true },
         { head: 'value', unit: '', left: true },
@@ -112,7 +112,7 @@ export function differencesText(summaries: readonly DifferenceSummary[], unit: S
     ];
   });
   return [
-    table(
+    textTable(
       [
         { head: 'TWS', unit },
         { head: 'points', unit: '' },

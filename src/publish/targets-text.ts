@@ -5,7 +5,7 @@ import { decimalsFor, fixed, rounded, significant } from './numbers.js';
 import { oneLine, shortened, wrapped } from './plain-text.js';
 import { type SpeedUnit, speedIn, unitSuffix } from './table-format.js';
 import { type PercentTable, percentOf, percentTable, type TargetCard, type TargetCell } from './targets.js';
-import { type Column, TEXT_WIDTH, table } from './text-table.js';
+import { type Column, TEXT_WIDTH, textTable } from './text-table.js';
 
 /** How a card's figures are written. */
 export interface TargetStyle {
@@ -78,7 +78,7 @@ function targetRows(card: TargetCard, { unit, decimals }: TargetStyle): string {
       shortened(oneLine(s.sailSet), SAILS_WIDTH),
     ];
   };
-  return table(
+  return textTable(
     columns,
     card.winds.flatMap((w) => [row(fixed(speedIn(unit, w.tws), 1), 'up', w.up), row('', 'down', w.down)]),
   );
@@ -89,7 +89,7 @@ function reachRows(card: TargetCard, { unit, decimals }: TargetStyle): string {
     { head: 'TWS', unit },
     ...card.reachAngles.map((a) => ({ head: `${significant(degrees(a), 4)} deg`, unit })),
   ];
-  return table(
+  return textTable(
     columns,
     card.winds.map((w) => [
       fixed(speedIn(unit, w.tws), 1),
@@ -103,7 +103,7 @@ export const threeFigures = (v: number): string => fixed(v, v < 9.995 ? 2 : 1);
 
 /** A helper table as text: find the boat's speed below the wind, read the percent at the left. */
 function percentRows(t: PercentTable, { unit }: TargetStyle): string {
-  return table(
+  return textTable(
     [{ head: 'percent', unit: '%' }, ...t.tws.map((v) => ({ head: `${fixed(speedIn(unit, v), 1)}`, unit }))],
     t.rows.map((r) => [fixed(r.percent, 0), ...r.speeds.map((v) => threeFigures(speedIn(unit, v)))]),
   );
@@ -112,7 +112,7 @@ function percentRows(t: PercentTable, { unit }: TargetStyle): string {
 /** A boat speed [m/s] in percent of every target. */
 function percentOfRows(card: TargetCard, speed: number, { unit }: TargetStyle): string {
   const cell = (p: number | undefined): string => (p === undefined ? '-' : fixed(p, 0));
-  return table(
+  return textTable(
     [
       { head: 'TWS', unit },
       { head: 'up', unit: '%' },

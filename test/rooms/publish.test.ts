@@ -53,8 +53,20 @@ function hostileReport(): PolarReport {
       results: polar.results.map((row) => row.map(spoil)),
       bestUp: polar.bestUp.map(spoil),
       bestDown: polar.bestDown.map(spoil),
+      sets: polar.sets.map((s) => ({ ...s, name: HOSTILE })),
     },
     resistance: report.resistance,
+    righting: { ...report.righting, points: report.righting.points.map((p) => ({ ...p })) },
+    sails: {
+      ...report.sails,
+      boat: HOSTILE,
+      sets: report.sails.sets.map((s) => ({
+        ...s,
+        name: HOSTILE,
+        loadings: s.loadings.map((l) => ({ ...l, sails: l.sails.map((x) => ({ ...x, sail: HOSTILE })) })),
+      })),
+    },
+    balances: report.balances.map((b) => ({ ...b, state: { ...b.state, sailSet: HOSTILE } })),
   };
 }
 
