@@ -116,6 +116,10 @@ function withClosest(polar: Polar, angles: readonly number[]): Polar {
   return {
     ...polar,
     twa: [...more, ...polar.twa],
+    sets: polar.sets.map((s) => ({
+      name: s.name,
+      speed: s.speed.map((row) => [...more.map(() => Number.NaN), ...row]),
+    })),
     results: polar.results.map((row, i) => [
       ...more.map((twa) => ({
         status: 'unbalanced' as const,
