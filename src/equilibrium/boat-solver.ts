@@ -28,8 +28,9 @@ function regimeOf(model: BoatModel, x: Float64Array, ease: number): Regime {
   if (model.sailSet.spec.sails.some((s) => (s.reef ?? 0) > 0)) return 'reefed';
   if (ease > EASE_SHOWN) return 'easing';
   if (x[X.heel]! > upper[X.heel]! - 1e-6) return 'heel limited';
-  if (x[X.arm]! > upper[X.arm]! * (1 - 1e-6)) return 'crew full out';
-  if (Math.abs(x[X.arm]!) < 0.02 * upper[X.arm]!) return 'crew inboard';
+  const { armOut } = model.boat.spec.crew;
+  if (x[X.arm]! > armOut * (1 - 1e-6)) return 'crew full out';
+  if (Math.abs(x[X.arm]!) < 0.02 * armOut) return 'crew inboard';
   return 'crew part out';
 }
 
@@ -59,7 +60,7 @@ export function describeState(set: SetSolver, tws: number, twa: number, s: Solut
     ease = full > 0 ? Math.max(0, 1 - moment / full) : 0;
   }
   const arm = x[X.arm]!;
-  const { lower, upper } = model.bounds;
+  const { armOut, armLee } = model.boat.spec.crew;
   const notes: string[] = [];
   if (!s.proven) notes.push('balances, but not proven to be the fastest state: the search ended at an edge');
   return {
@@ -77,7 +78,7 @@ export function describeState(set: SetSolver, tws: number, twa: number, s: Solut
     ease,
     depower: x[X.depower]!,
     crewArm: arm,
-    crewShare: arm >= 0 ? arm / Math.max(1e-9, upper[X.arm]!) : -arm / Math.min(-1e-9, lower[X.arm]!),
+    crewShare: arm >= 0 ? arm / Math.max(1e-9, armOut) : -arm / Math.min(-1e-9, armLee),
     boardDown: x[X.hoist]!,
     sailSet: sailSet.name,
     regime: regimeOf(model, x, ease),

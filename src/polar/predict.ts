@@ -99,9 +99,12 @@ function familyOf(sets: readonly SetSolver[]): { wholeOf: number[]; stands: numb
 
 function apparentAngle(tws: number, twa: number, x: Float64Array): number {
   const leeway = x[X.leeway]!;
-  return Math.atan2(
-    tws * Math.sin(twa - leeway) - x[X.speed]! * Math.sin(leeway),
-    tws * Math.cos(twa - leeway) + x[X.speed]! * Math.cos(leeway),
+  // On a dead run the wind may come from a little to leeward.
+  return Math.abs(
+    Math.atan2(
+      tws * Math.sin(twa - leeway) - x[X.speed]! * Math.sin(leeway),
+      tws * Math.cos(twa - leeway) + x[X.speed]! * Math.cos(leeway),
+    ),
   );
 }
 
