@@ -9,3 +9,16 @@ export { boatJsonSchema } from './schema.js';
 export { type RightingArms, rightingArms } from './stability.js';
 export { type StarterKind, starterBoat } from './starter.js';
 export type { Boat, BoatSpec, CrewSpec, Estimate, WeightItem } from './types.js';
+export {
+  type Change,
+  type Difference,
+  differencesOf,
+  fileDifferences,
+  isWholeBoat,
+  showPath,
+  type Variant,
+  valuesOf,
+  variantGrid,
+  variantsFromFile,
+  variantsIn,
+} from './variants.js';
