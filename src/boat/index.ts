@@ -1,6 +1,7 @@
-export { assembleBoat, massOf, windageOf, windProfileOf } from './assemble.js';
+export { assembleBoat, boatWithFactors, massOf, windageOf, windProfileOf } from './assemble.js';
 export { BesideError, type ReadBeside } from './beside.js';
 export { type DescriptionRow, describeBoat, effortCentre, lateralCentre, leadOf } from './describe.js';
+export { FACTOR_NAMES, type FactorName, type ModelFactors, NO_FACTORS } from './factors.js';
 export { BoatFileError, type BoatFileProblem } from './problems.js';
 export { readBoatSpec } from './read.js';
 export { readBoatFile } from './read-file.js';
