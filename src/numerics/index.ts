@@ -4,4 +4,5 @@ export { luFactor, luSolve, luSolveTransposed } from './lu.js';
 export { boundedMinimum } from './minimum.js';
 export { hermite, type Pchip, pchip, pchipSlopes } from './pchip.js';
 export { bracketedRoot } from './root.js';
+export { normalQuantile, SOBOL_DIMENSIONS, sobolPoints } from './sobol.js';
 export { type SymmetricSpline, symmetricSpline } from './spline.js';

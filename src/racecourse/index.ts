@@ -1,4 +1,21 @@
 export {
+  linearShares,
+  type PairCertainty,
+  pairCertainty,
+  quantile,
+} from './certainty.js';
+export {
+  type Comparison,
+  type Crossover,
+  certaintyBetween,
+  comparison,
+  crossoversOf,
+  type Entrant,
+  POINTS_OF_SAIL,
+  type Standing,
+  windDeviations,
+} from './comparison.js';
+export {
   COURSE_NAMES,
   type Course,
   type CourseName,
@@ -9,6 +26,7 @@ export {
   NO_COST,
   namedCourse,
 } from './course.js';
+export { factorDraws, SPREADS, type Spread } from './spreads.js';
 export {
   type CourseTime,
   courseTime,
@@ -23,6 +41,16 @@ export {
   type SailedPoint,
   sailedPoints,
 } from './times.js';
+export {
+  type Anchor,
+  anglesFor,
+  COMPARISON_ANGLES,
+  doVariantTask,
+  timesUnderFactors,
+  type VariantTask,
+  type VariantTimes,
+  variantTimes,
+} from './variant-times.js';
 export {
   observedWind,
   steadyWind,
