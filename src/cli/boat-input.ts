@@ -8,12 +8,12 @@ import { UsageError } from './errors.js';
 let engine: UnitEngine | undefined;
 
 /** Loads mathjs when an unusual quantity needs it. */
-function unitEngine(): UnitEngine {
+export function unitEngine(): UnitEngine {
   engine ??= unitEngineFrom(createRequire(import.meta.url)('mathjs') as MathjsModule);
   return engine;
 }
 
-function standardInput(): Uint8Array {
+export function standardInput(): Uint8Array {
   try {
     return readFileSync(0);
   } catch (error) {

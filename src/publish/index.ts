@@ -6,6 +6,13 @@ export {
   METHODS,
   type Method,
 } from './cautions.js';
+export {
+  type ComparisonReport,
+  comparisonJson,
+  comparisonPage,
+  comparisonText,
+  htmlTable,
+} from './comparison.js';
 export { csvText, POLAR_COLUMNS, polarCsv } from './csv.js';
 export { polarPage } from './html.js';
 export { hullPlanPage } from './hull-plan.js';

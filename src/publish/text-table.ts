@@ -7,7 +7,7 @@ import { type BoatFacts, figures, type PolarReport, type StateFigures } from './
 /** Widest line of any table for the terminal. */
 export const TEXT_WIDTH = 100;
 
-interface Column {
+export interface Column {
   readonly head: string;
   readonly unit: string;
   readonly left?: boolean;
@@ -16,7 +16,7 @@ interface Column {
 const width = (s: string): number => [...s].length;
 
 /** A table in plain text: headers, units, a rule, rows. Texts to the left, figures to the right. */
-function table(columns: readonly Column[], rows: readonly (readonly string[] | 'rule')[]): string {
+export function table(columns: readonly Column[], rows: readonly (readonly string[] | 'rule')[]): string {
   const units = columns.some((c) => c.unit !== '');
   const widths = columns.map((c, j) =>
     Math.max(width(c.head), width(c.unit), ...rows.map((r) => (r === 'rule' ? 0 : width(r[j] ?? '')))),

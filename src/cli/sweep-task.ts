@@ -1,0 +1,6 @@
+export interface SweepTask {
+  readonly kind: 'sweep';
+}
+export function doSweepTask(_task: SweepTask): unknown {
+  return undefined;
+}
