@@ -154,6 +154,43 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
       });
     },
   },
+  sweep: {
+    usage: 'sweep <boat>',
+    describe: 'time every variant of a grid on a course; goes on where it was stopped',
+    examples: [
+      'polarwright sweep mine.yaml --vary "rig.mast_height = 8 to 10 m in 5 steps; crew.count = 3 or 4"',
+      'polarwright sweep mine.yaml --vary "sails.main.area = times 0.8 to 1.2 in 100 steps" --shard 3/8',
+      'polarwright sweep mine.yaml --vary "sails.main.area = times 0.8 to 1.2 in 100 steps" --merge 8',
+    ],
+    positional: BOAT,
+    options: {
+      vary: {
+        type: 'string',
+        describe: 'keys and their values, axes of the grid separated by ";"',
+        demandOption: true,
+      },
+      ...COURSE_OPTIONS,
+      shard: { type: 'string', describe: 'do one part of several only, such as 3/8' },
+      merge: { type: 'string', describe: 'join so many parts that are done' },
+      restart: { type: 'boolean', describe: 'begin anew, whatever is there', default: false },
+      workers: WORKERS,
+      out: { type: 'string', describe: 'folder to write to', default: 'reports' },
+    },
+    run: async (argv) => {
+      const { sweepCommand } = await import('./sweep-command.js');
+      await sweepCommand({
+        boat: file(argv.boat),
+        vary: String(argv.vary),
+        ...courseArguments(argv),
+        wind: text(argv.wind),
+        shard: text(argv.shard),
+        merge: text(argv.merge),
+        restart: argv.restart === true,
+        workers: text(argv.workers),
+        out: String(argv.out),
+      });
+    },
+  },
   check: {
     usage: 'check <boat>',
     describe: 'read a boat file; show what follows from it, estimates and warnings',

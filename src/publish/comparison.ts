@@ -33,6 +33,8 @@ const signed = (v: number, decimals = 1): string => {
   return Number.isFinite(v) && Number(text) > 0 ? `+${text}` : text;
 };
 const percent = (p: number): string => (Number.isFinite(p) ? `${fixed(100 * p, 0)} %` : '');
+/** A probability: never certain, for the draws are a sample and do not cover everything. */
+const chance = (p: number): string => (p > 0.99 ? 'over 99 %' : p < 0.01 ? 'under 1 %' : percent(p));
 const pointName = (twa: number): string => {
   const deg = Math.round(degrees(twa));
   return deg === 0 ? 'beat' : deg === 180 ? 'run' : `${deg}`;
@@ -157,7 +159,7 @@ export function comparisonText(r: ComparisonReport): string {
             : [
                 fixed(s.againstBase.deviation, 1),
                 `${signed(s.againstBase.low)} .. ${signed(s.againstBase.high)}`,
-                percent(s.againstBase.quicker),
+                chance(s.againstBase.quicker),
               ]
           : []),
         s.worst === undefined ? '' : fixed(s.worst.loss, 1),
@@ -377,7 +379,7 @@ export function comparisonPage(r: ComparisonReport): string {
           : [
               fixed(s.againstBase.deviation, 1),
               `${signed(s.againstBase.low)} to ${signed(s.againstBase.high)}`,
-              percent(s.againstBase.quicker),
+              chance(s.againstBase.quicker),
             ]
         : []),
       s.worst === undefined ? '' : fixed(s.worst.loss, 1),
@@ -472,7 +474,7 @@ export function comparisonPage(r: ComparisonReport): string {
         html: `<p class="soft">Seconds per nautical mile less the base; negative is quicker. Beat and run by best VMG, every other direction by the quickest mix of two states.</p>${c.names
           .slice(1)
           .map((_, k) => heatMap(c, k + 1))
-          .join('\n')}\n${curves}`,
+          .join('\n')}\n<div class="charts">${curves}</div>`,
       },
       ...(drawn
         ? [

@@ -46,6 +46,7 @@ export {
   anglesFor,
   COMPARISON_ANGLES,
   doVariantTask,
+  sweepTimes,
   timesUnderFactors,
   type VariantTask,
   type VariantTimes,

@@ -70,6 +70,17 @@ export function variantTimes(boat: Boat, course: Course, wind: WindTable): Varia
   return { polar, times, anchors: times.map((t, i) => anchorsFor(polar, i, t, sets)) };
 }
 
+/** Angles [rad] of a sweep's polars: close where best VMG lies, wide between. */
+const SWEEP_ANGLES: readonly number[] = [32, 40, 48, 60, 75, 90, 105, 120, 135, 150, 165, 180].map(
+  (a) => a * DEGREE,
+);
+
+/** The time of the course in each wind of the table, without the rest: what a sweep needs of each variant. */
+export function sweepTimes(boat: Boat, course: Course, wind: WindTable): (CourseTime | NoTime)[] {
+  const polar = predictPolar(boat, { tws: wind.tws, twa: anglesFor(course, SWEEP_ANGLES) });
+  return wind.tws.map((_, i) => courseTime(sailedPoints(polar, i), course));
+}
+
 /** The boat with only those of its sail sets that are named. */
 function withSets(boat: Boat, names: ReadonlySet<string>): Boat {
   const { spec } = boat;
