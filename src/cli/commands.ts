@@ -154,6 +154,33 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
       });
     },
   },
+  sensitivity: {
+    usage: 'sensitivity <boat>',
+    describe: 'show what a small change of each design quantity does to the time',
+    examples: [
+      'polarwright sensitivity boats/keelboat.yaml',
+      'polarwright sensitivity mine.yaml --wind 5,12,20 --step 2',
+    ],
+    positional: BOAT,
+    options: {
+      wind: { type: 'string', describe: 'true wind speeds, kn', default: '6,16' },
+      step: { type: 'string', describe: 'change of each quantity, %', default: '5' },
+      workers: WORKERS,
+      out: { type: 'string', describe: 'folder to write to', default: 'reports' },
+      json: { ...JSON_OPTION, describe: 'print the results as JSON, and write no files' },
+    },
+    run: async (argv) => {
+      const { sensitivityCommand } = await import('./sensitivity-command.js');
+      await sensitivityCommand({
+        boat: file(argv.boat),
+        wind: String(argv.wind),
+        step: String(argv.step),
+        workers: text(argv.workers),
+        out: String(argv.out),
+        json: argv.json === true,
+      });
+    },
+  },
   sweep: {
     usage: 'sweep <boat>',
     describe: 'time every variant of a grid on a course; goes on where it was stopped',

@@ -22,6 +22,12 @@ export { decimalsFor, fixed, rounded, significant } from './numbers.js';
 export { fileStem, oneLine, terminalText, wrapped } from './plain-text.js';
 export { type BoatFacts, boatFacts, figures, type PolarReport, polarReport } from './report.js';
 export { RESISTANCE_PARTS, type ResistanceReport, resistanceCsv, resistanceReport } from './resistance.js';
+export {
+  type SensitivityReport,
+  sensitivityJson,
+  sensitivityPage,
+  sensitivityText,
+} from './sensitivity.js';
 export { sweepText } from './sweep.js';
 export { balanceText, boatText, cautionText, TEXT_WIDTH, targetTable, warningText } from './text-table.js';
 export { OutputError, type OutputFile, writeFiles } from './write-files.js';

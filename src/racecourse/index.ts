@@ -26,6 +26,15 @@ export {
   NO_COST,
   namedCourse,
 } from './course.js';
+export {
+  type Altered,
+  DESIGN_QUANTITIES,
+  type DesignQuantity,
+  legTimes,
+  SENSITIVITY_LEGS,
+  type Sensitivity,
+  sensitivityPlan,
+} from './sensitivity.js';
 export { factorDraws, SPREADS, type Spread } from './spreads.js';
 export {
   type CourseTime,
