@@ -79,7 +79,7 @@ export async function compareCommand(a: CompareArguments): Promise<void> {
         spec: boat.spec,
         course,
         tws: wind.tws,
-        anchors: known[k]!.anchors,
+        known: { anchors: known[k]!.anchors, times: known[k]!.times },
         draws: part,
       }),
     ),
