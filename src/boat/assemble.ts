@@ -1,7 +1,14 @@
 import { logWindProfile, powerWindProfile, type WindProfile } from '../environment/index.js';
 import { prepareFoilSystem } from '../foils/index.js';
 import { generateRoundBilge, type HullOptions, prepareHull } from '../hull/index.js';
-import { prepareSailSet, prepareTableSet, type SailShape, type WindageBody } from '../sails/index.js';
+import {
+  prepareSailSet,
+  prepareTableSet,
+  type SailSet,
+  type SailShape,
+  type WindageBody,
+} from '../sails/index.js';
+import { foilsWithFactors, hullWithFactors, type ModelFactors, withFactors } from './factors.js';
 import type { Boat, BoatSpec, Estimate } from './types.js';
 
 /**
@@ -131,6 +138,24 @@ export function assembleBoat(input: { spec: BoatSpec; estimates?: readonly Estim
     sidewaysVolume: hull.form.sidewaysVolume,
     water: spec.water,
   });
+  return {
+    spec,
+    lines,
+    hull,
+    foils,
+    sailSets: sailSetsOf(spec, wind),
+    wind,
+    mass,
+    centre: { x, z },
+    estimates,
+    warnings: hull.warnings,
+  };
+}
+
+/** The sail sets of a boat, prepared. */
+function sailSetsOf(spec: BoatSpec, wind: WindProfile, windage = 1): SailSet[] {
+  const scaled = (bodies: WindageBody[]): WindageBody[] =>
+    bodies.map((b) => ({ ...b, frontal: b.frontal * windage, side: b.side * windage }));
   const byName = new Map(spec.sails.map((s) => [s.name, s]));
   const sailSets = spec.sailSets.map((set) => {
     const sails = set.sails.map((name) => {
@@ -143,7 +168,7 @@ export function assembleBoat(input: { spec: BoatSpec; estimates?: readonly Estim
     return prepareSailSet({
       name: set.name,
       sails,
-      windage: windageOf(spec, sails),
+      windage: scaled(windageOf(spec, sails)),
       boomLimit: spec.rig.boomLimit,
       wind,
       airDensity: spec.air.density,
@@ -153,22 +178,28 @@ export function assembleBoat(input: { spec: BoatSpec; estimates?: readonly Estim
   const tables = spec.measuredRigs.map((table) =>
     prepareTableSet({
       table,
-      windage: table.windageIncluded ? [] : windageOf(spec),
+      windage: table.windageIncluded ? [] : scaled(windageOf(spec)),
       wind,
       airDensity: spec.air.density,
     }),
   );
+  return [...sailSets, ...tables];
+}
+
+/**
+ * The boat with the uncertain constants of the model multiplied. Hull and foils are not prepared again: it takes a
+ * small part of the time that `assembleBoat` takes.
+ */
+export function boatWithFactors(boat: Boat, factors: ModelFactors): Boat {
+  const spec = withFactors(boat.spec, factors);
+  const wind = windProfileOf(spec);
   return {
+    ...boat,
     spec,
-    lines,
-    hull,
-    foils,
-    sailSets: [...sailSets, ...tables],
+    hull: hullWithFactors(boat.hull, spec, factors),
+    foils: foilsWithFactors(boat.foils, factors),
+    sailSets: sailSetsOf(spec, wind, factors.windage),
     wind,
-    mass,
-    centre: { x, z },
-    estimates,
-    warnings: hull.warnings,
   };
 }
 

@@ -1,8 +1,8 @@
 import { writeQuantity } from '../units/index.js';
 import type { Path } from './parse-file.js';
-import { showPath } from './parse-file.js';
 import { fieldAt } from './schema.js';
 import type { Estimate } from './types.js';
+import { showPath } from './variants.js';
 
 /** Fills in what a file leaves out, and records every value it fills in with the rule from the definition. */
 export class Estimator {

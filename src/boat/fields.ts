@@ -40,6 +40,11 @@ export interface TextField extends Common {
   readonly longest: number;
 }
 
+/** Keys and values that differ from the file's own; read by `variants.ts`. */
+export interface DifferencesField extends Common {
+  readonly type: 'differences';
+}
+
 /** Fixed keys. */
 export interface SectionField extends Common {
   readonly type: 'section';
@@ -67,7 +72,8 @@ export type Field =
   | TextField
   | SectionField
   | NamedField
-  | ListField;
+  | ListField
+  | DifferencesField;
 
 /** What reading a field yields: quantities in SI and rad. */
 export type ValueOf<F> = F extends { type: 'quantity' | 'count' }

@@ -8,11 +8,13 @@ import {
   type ParsedNode,
   parseAllDocuments,
   type Scalar,
+  type YAMLMap,
 } from 'yaml';
 import { KINDS, nearest, parseQuantity, QuantityError, type UnitEngine } from '../units/index.js';
 import type { Field, QuantityField } from './fields.js';
 import { BoatFileError, ProblemList } from './problems.js';
 import { type BoatFileValue, boatFile, rangeSi } from './schema.js';
+import { applyChanges, type Change, showPath, variantsIn } from './variants.js';
 
 /** Largest boat file [characters or bytes]: 1 MB. */
 const LARGEST = 1_000_000;
@@ -30,26 +32,17 @@ export interface ParsedFile {
   complain(path: Path, message: string, hint: string): void;
 }
 
-/** Path of keys as people read it: `sail_sets.upwind[2]`. */
-export function showPath(path: Path): string {
-  return path.reduce(
-    (text, key) =>
-      key.startsWith('[')
-        ? text + key
-        : `${text}${text === '' ? '' : '.'}${/^[\w +'-]{1,40}$/u.test(key) ? key : JSON.stringify(key).slice(0, 50)}`,
-    '',
-  );
-}
-
 /**
  * Reads the text of a boat file by its definition: quantities to SI, choices, names; ranges are checked.
  * Problems are collected, not thrown, but for a text that is no YAML at all.
+ * @param changes written into the text's keys before they are read; problems name the places of the changes
  * @throws BoatFileError
  */
 export function parseBoatFile(
   input: string | Uint8Array,
   file: string,
   engine?: () => UnitEngine,
+  changes: readonly Change[] = [],
 ): ParsedFile {
   const problems = new ProblemList(file);
   const whole = (message: string, hint: string, line = 1, column = 1, key = ''): never => {
@@ -130,9 +123,17 @@ export function parseBoatFile(
   const complain = (path: Path, message: string, hint: string, offset?: number): void => {
     let at = offset;
     for (let n = path.length; at === undefined && n > 0; n--) at = places.get(id(path.slice(0, n)));
+    if (at !== undefined && at < 0) {
+      // Nodes that a change has written bear its number: see `applyChanges`.
+      problems.add({ ...changes[-at - 1]!.place, key: showPath(path), message, hint });
+      return;
+    }
     const { line, col } = lines.linePos(at ?? 0);
     problems.add({ line: Math.max(1, line), column: Math.max(1, col), key: showPath(path), message, hint });
   };
+  applyChanges(root as YAMLMap, changes, engine, (i, message, hint) => {
+    problems.add({ ...changes[i]!.place, key: showPath(changes[i]!.path), message, hint });
+  });
 
   let aliases = 0;
   const startOf = (node: unknown): number | undefined => {
@@ -168,6 +169,7 @@ export function parseBoatFile(
     }
     if (field.type === 'section' || field.type === 'named') return readMap(field, node, path);
     if (field.type === 'list') return readList(field, node, path);
+    if (field.type === 'differences') return undefined;
     if (!isScalar(node)) {
       complain(
         path,
@@ -329,6 +331,8 @@ export function parseBoatFile(
   };
 
   const value = read(boatFile, root, []) as BoatFileValue;
+  // Variants that lead nowhere are told of with the file itself, not only when they are asked for.
+  if (value.variants !== undefined && changes.length === 0) variantsIn(text, file);
   return { value, problems, complain };
 }
 
@@ -409,6 +413,8 @@ function wanted(field: Field): string {
       return 'a section with a name for each entry';
     case 'list':
       return 'a list';
+    case 'differences':
+      return 'a section with keys as in this file';
   }
 }
 

@@ -3,6 +3,8 @@ export interface BoatFileProblem {
   /** Line and column in the text, from 1. */
   readonly line: number;
   readonly column: number;
+  /** The file, where it is another one than the boat file. */
+  readonly file?: string;
   /** Path of keys such as `sails.main.luff`; empty for the file as a whole. */
   readonly key: string;
   readonly message: string;
@@ -32,7 +34,7 @@ export class BoatFileError extends Error {
 /** `boats/mine.yaml:14:9 sails.main.luff: 5200 m is outside 0.5 m to 40 m; is it in millimetres?` */
 function problemLine(file: string, p: BoatFileProblem): string {
   const key = p.key === '' ? 'file' : p.key;
-  return `${file}:${p.line}:${p.column} ${key}: ${p.message}${p.hint === '' ? '' : `; ${p.hint}`}`;
+  return `${p.file ?? file}:${p.line}:${p.column} ${key}: ${p.message}${p.hint === '' ? '' : `; ${p.hint}`}`;
 }
 
 /** Collects problems; keeps the first few dozen and counts on. */

@@ -4,6 +4,7 @@ import type { BoatFileProblem } from './problems.js';
 import { BoatFileError } from './problems.js';
 import { readWhole } from './read-whole.js';
 import type { Boat } from './types.js';
+import type { Change } from './variants.js';
 
 /** A little more than the reader takes, so that a file that is too large is known as such. */
 const ENOUGH = 1_000_001;
@@ -24,7 +25,7 @@ function nodeUnitEngine(): UnitEngine {
  * of the library also loads in a browser or a worker.
  * @throws BoatFileError when the file cannot be opened, or anything in it is wrong
  */
-export function readBoatFile(path: string): Boat {
+export function readBoatFile(path: string, changes: readonly Change[] = []): Boat {
   const { dirname, join } = process.getBuiltinModule('node:path');
   const folder = dirname(path);
   const own = (message: string, hint: string): never => {
@@ -34,11 +35,17 @@ export function readBoatFile(path: string): Boat {
   const besideFail = (message: string, hint: string): never => {
     throw new BesideError(message, hint);
   };
-  return readWhole(bytesOf(path, ENOUGH, 'a boat file', own), path, nodeUnitEngine, (name) => {
-    const bytes = bytesOf(join(folder, ...partsBeside(name)), BESIDE, 'a file to read', besideFail);
-    if (bytes.length >= BESIDE) besideFail('the file is larger than 200 MB', 'is it the right file?');
-    return bytes;
-  });
+  return readWhole(
+    bytesOf(path, ENOUGH, 'a boat file', own),
+    path,
+    nodeUnitEngine,
+    (name) => {
+      const bytes = bytesOf(join(folder, ...partsBeside(name)), BESIDE, 'a file to read', besideFail);
+      if (bytes.length >= BESIDE) besideFail('the file is larger than 200 MB', 'is it the right file?');
+      return bytes;
+    },
+    changes,
+  );
 }
 
 function bytesOf(

@@ -4,11 +4,13 @@ import type { ReadBeside } from './beside.js';
 import { BoatFileError } from './problems.js';
 import { readBoatSpec } from './read.js';
 import type { Boat } from './types.js';
+import type { Change } from './variants.js';
 
 /**
  * Reads a boat file's text and assembles the boat. Pure: no files are opened but by `beside`.
  * @param fileName only for messages
  * @param engine reads unusual quantities ("2 * 3.1 m"); see `loadUnitEngine`
+ * @param changes makes a variant of the boat
  * @throws BoatFileError with every problem's line, column, key and hint
  */
 export function readWhole(
@@ -16,8 +18,9 @@ export function readWhole(
   fileName = 'boat file',
   engine?: () => UnitEngine,
   beside?: ReadBeside,
+  changes: readonly Change[] = [],
 ): Boat {
-  const read = readBoatSpec(text, fileName, engine, beside);
+  const read = readBoatSpec(text, fileName, engine, beside, changes);
   try {
     return assembleBoat(read);
   } catch (error) {

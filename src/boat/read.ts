@@ -12,6 +12,7 @@ import { type RigPlaces, readSail, reefsOf } from './read-sails.js';
 import { readWaves } from './read-waves.js';
 import type { BoatFileValue } from './schema.js';
 import type { BoatSpec, CrewSpec, Estimate, WeightItem } from './types.js';
+import type { Change } from './variants.js';
 
 /** Density [kg/m3] at which ballast is turned into keel volume: cast iron. */
 const CAST_IRON = 7200;
@@ -36,6 +37,7 @@ type Complain = ParsedFile['complain'];
  * @param fileName only for messages
  * @param engine reads unusual quantities ("2 * 3.1 m"); see `loadUnitEngine`
  * @param beside reads the files it names
+ * @param changes makes a variant of it; see `variants.ts`
  * @returns everything in SI and body axes (origin amidships of the design waterline, x forward, z up)
  * @throws BoatFileError with every problem's line, column, key and hint
  */
@@ -44,8 +46,9 @@ export function readBoatSpec(
   fileName = 'boat file',
   engine?: () => UnitEngine,
   beside: ReadBeside = nothingBeside,
+  changes: readonly Change[] = [],
 ): { spec: BoatSpec; estimates: Estimate[] } {
-  const parsed = parseBoatFile(input, fileName, engine);
+  const parsed = parseBoatFile(input, fileName, engine, changes);
   // A part that could not be read would only cause false complaints about how the parts fit.
   parsed.problems.throwIfAny();
   const estimator = new Estimator();

@@ -1106,6 +1106,17 @@ export const boatFile = {
         },
       },
     },
+    variants: {
+      type: 'named',
+      count: [1, 200],
+      describe:
+        'Named changes to this boat, to be compared with it: keys as in the file, nested or with dots between (rig.mast_height: 9 m).',
+      entry: {
+        type: 'differences',
+        describe:
+          'New values. Also "times 1.1", "plus 0.2 m", "left out"; a range "8 to 10 m in 5 steps" or a choice "3 or 4" makes several variants, two of them a grid.',
+      },
+    },
     limits: {
       type: 'section',
       describe: 'What the crew accept.',
@@ -1215,6 +1226,8 @@ function schemaOf(field: Field): JsonSchema {
         maxProperties: field.count[1],
         additionalProperties: schemaOf(field.entry),
       };
+    case 'differences':
+      return { description, type: 'object', minProperties: 1 };
     case 'list':
       return {
         description,

@@ -8,7 +8,7 @@ import { UsageError } from './errors.js';
 let engine: UnitEngine | undefined;
 
 /** Loads mathjs when an unusual quantity needs it. */
-function unitEngine(): UnitEngine {
+export function unitEngine(): UnitEngine {
   engine ??= unitEngineFrom(createRequire(import.meta.url)('mathjs') as MathjsModule);
   return engine;
 }

@@ -19,6 +19,8 @@ interface CommandNote {
   readonly describe: string;
   readonly examples: readonly string[];
   readonly positional: { readonly name: string; readonly describe: string; readonly default?: string };
+  /** What may follow the first word, any number of times. */
+  readonly rest?: { readonly name: string; readonly describe: string };
   readonly options: Readonly<Record<string, OptionNote>>;
   readonly run: (argv: Readonly<Record<string, unknown>>) => Promise<void>;
 }
@@ -34,6 +36,13 @@ const JSON_OPTION: OptionNote = {
 const BOAT = { name: 'boat', describe: 'boat file (YAML); "-" reads standard input' };
 
 const text = (v: unknown): string | undefined => (v === undefined ? undefined : String(v));
+const courseArguments = (argv: Readonly<Record<string, unknown>>) => ({
+  course: text(argv.course),
+  tacks: text(argv.tacks),
+  tackCost: text(argv['tack-cost']),
+  gybes: text(argv.gybes),
+  gybeCost: text(argv['gybe-cost']),
+});
 const file = (v: unknown): string => (v === STANDARD ? '-' : String(v));
 
 /** How a delimited table is written. */
@@ -51,6 +60,23 @@ const tableWords = (argv: Readonly<Record<string, unknown>>) => ({
   speedUnit: text(argv['speed-unit']),
   angleUnit: text(argv['angle-unit']),
 });
+const COURSE_OPTIONS: Readonly<Record<string, OptionNote>> = {
+  course: {
+    type: 'string',
+    describe:
+      'windward-leeward, triangle, right-triangle, trapezoid, upwind, reach, downwind, circle, or legs as deg=share: 0=50,120=25,120=25',
+  },
+  wind: {
+    type: 'string',
+    describe:
+      'kn: a list 6,10,14; shares 6=20,10=50,14=30; "weibull 11 2" (mean, shape); or a file of observations',
+  },
+  tacks: { type: 'string', describe: 'tacks per nautical mile on legs that are tacked' },
+  'tack-cost': { type: 'string', describe: 'seconds that a tack costs' },
+  gybes: { type: 'string', describe: 'gybes per nautical mile on legs that are gybed' },
+  'gybe-cost': { type: 'string', describe: 'seconds that a gybe costs' },
+};
+const WORKERS: OptionNote = { type: 'string', describe: 'worker threads (one for every core)' };
 
 /** Every command: what it is called, what it takes, what it runs. Heavy parts are loaded when a command runs. */
 const COMMANDS: Readonly<Record<string, CommandNote>> = {
@@ -119,6 +145,106 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
         crewMass: text(argv['crew-mass']),
         out: text(argv.out),
         json: argv.json === true,
+      });
+    },
+  },
+  compare: {
+    usage: 'compare <boat> [variant..]',
+    describe: 'rank variants of a boat on a course, with how sure it is',
+    examples: [
+      'polarwright compare mine.yaml',
+      'polarwright compare mine.yaml "taller mast" other.yaml --course triangle --wind 6=20,10=50,14=30',
+      'polarwright compare mine.yaml --wind "weibull 11 2" --draws 1000 --json',
+    ],
+    positional: BOAT,
+    rest: {
+      name: 'variant',
+      describe: 'names from its variants:, files with differences, or boat files; none: all its variants',
+    },
+    options: {
+      ...COURSE_OPTIONS,
+      draws: { type: 'string', describe: 'paired draws of the uncertain constants; 0: none', default: '256' },
+      seed: { type: 'string', describe: 'seed of the draws', default: '1' },
+      workers: WORKERS,
+      out: { type: 'string', describe: 'folder to write to', default: 'reports' },
+      json: { ...JSON_OPTION, describe: 'print the results as JSON, and write no files' },
+    },
+    run: async (argv) => {
+      const { compareCommand } = await import('./compare-command.js');
+      await compareCommand({
+        boat: file(argv.boat),
+        variants: ((argv.variant ?? []) as readonly unknown[]).map(file),
+        ...courseArguments(argv),
+        wind: text(argv.wind),
+        draws: String(argv.draws),
+        seed: String(argv.seed),
+        workers: text(argv.workers),
+        out: String(argv.out),
+        json: argv.json === true,
+      });
+    },
+  },
+  sensitivity: {
+    usage: 'sensitivity <boat>',
+    describe: 'show what a small change of each design quantity does to the time',
+    examples: [
+      'polarwright sensitivity boats/keelboat.yaml',
+      'polarwright sensitivity mine.yaml --wind 5,12,20 --step 2',
+    ],
+    positional: BOAT,
+    options: {
+      wind: { type: 'string', describe: 'true wind speeds, kn', default: '6,16' },
+      step: { type: 'string', describe: 'change of each quantity, %', default: '5' },
+      workers: WORKERS,
+      out: { type: 'string', describe: 'folder to write to', default: 'reports' },
+      json: { ...JSON_OPTION, describe: 'print the results as JSON, and write no files' },
+    },
+    run: async (argv) => {
+      const { sensitivityCommand } = await import('./sensitivity-command.js');
+      await sensitivityCommand({
+        boat: file(argv.boat),
+        wind: String(argv.wind),
+        step: String(argv.step),
+        workers: text(argv.workers),
+        out: String(argv.out),
+        json: argv.json === true,
+      });
+    },
+  },
+  sweep: {
+    usage: 'sweep <boat>',
+    describe: 'time every variant of a grid on a course; goes on where it was stopped',
+    examples: [
+      'polarwright sweep mine.yaml --vary "rig.mast_height = 8 to 10 m in 5 steps; crew.count = 3 or 4"',
+      'polarwright sweep mine.yaml --vary "sails.main.area = times 0.8 to 1.2 in 100 steps" --shard 3/8',
+      'polarwright sweep mine.yaml --vary "sails.main.area = times 0.8 to 1.2 in 100 steps" --merge 8',
+    ],
+    positional: BOAT,
+    options: {
+      vary: {
+        type: 'string',
+        describe: 'keys and their values, axes of the grid separated by ";"',
+        demandOption: true,
+      },
+      ...COURSE_OPTIONS,
+      shard: { type: 'string', describe: 'do one part of several only, such as 3/8' },
+      merge: { type: 'string', describe: 'join so many parts that are done' },
+      restart: { type: 'boolean', describe: 'begin anew, whatever is there', default: false },
+      workers: WORKERS,
+      out: { type: 'string', describe: 'folder to write to', default: 'reports' },
+    },
+    run: async (argv) => {
+      const { sweepCommand } = await import('./sweep-command.js');
+      await sweepCommand({
+        boat: file(argv.boat),
+        vary: String(argv.vary),
+        ...courseArguments(argv),
+        wind: text(argv.wind),
+        shard: text(argv.shard),
+        merge: text(argv.merge),
+        restart: argv.restart === true,
+        workers: text(argv.workers),
+        out: String(argv.out),
       });
     },
   },
@@ -394,7 +520,7 @@ async function lookOver(argv: readonly string[]): Promise<Words> {
   const files = [...places.map((i) => front[i]!), ...rear].slice(1);
   if (command !== undefined && !wantsText) {
     const { positional } = command;
-    if (files.length > 1)
+    if (files.length > 1 && command.rest === undefined)
       throw new UsageError(`${name} takes one ${positional.name} only, not also "${files[1]}"`, ownHelp);
     if (files.length === 0 && positional.default === undefined)
       throw new UsageError(
@@ -504,6 +630,8 @@ export async function choose(argv: readonly string[], version: string): Promise<
           describe: command.positional.describe,
           ...(command.positional.default !== undefined && { default: command.positional.default }),
         });
+        if (command.rest !== undefined)
+          y.positional(command.rest.name, { type: 'string', array: true, describe: command.rest.describe });
         for (const [option, note] of Object.entries(command.options))
           y.option(option, {
             type: note.type,

@@ -35,7 +35,7 @@ export {
   readStl,
   type Triangles,
 } from './mesh.js';
-export { prepareHull } from './prepare.js';
+export { planingShare, prepareHull } from './prepare.js';
 export { type RightingPoint, rightingCurve } from './righting-curve.js';
 export { generateRoundBilge } from './round-bilge.js';
 export {

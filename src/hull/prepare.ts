@@ -34,6 +34,11 @@ function smoothstep(x: number): number {
   return t * t * (3 - 2 * t);
 }
 
+/** Share of planing in the resistance of a hull that planes, over its Froude number on the cube root of volume. */
+export function planingShare(froudeVolume: number): number {
+  return smoothstep(froudeVolume - 1.5);
+}
+
 function rangeWarnings(form: HullForm, options: HullOptions, maxFn: boolean): RangeWarning[] {
   const out: RangeWarning[] = [];
   const is98 = options.residuary === 'delft-1998';
@@ -199,7 +204,7 @@ export function prepareHull(lines: Lines, load: HullLoad, options: HullOptions):
       let total = displacement;
       let w = 0;
       if (options.planing) {
-        w = smoothstep(v / volumeScale - 1.5);
+        w = planingShare(v / volumeScale);
         if (w > 0) {
           const s = leastPlaningDrag(
             {

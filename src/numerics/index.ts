@@ -5,4 +5,5 @@ export { boundedMinimum } from './minimum.js';
 export { hermite, type Pchip, pchip, pchipSlopes } from './pchip.js';
 export { bracketedRoot } from './root.js';
 export { createSmallQp, type SmallQp } from './small-qp.js';
+export { normalQuantile, SOBOL_DIMENSIONS, sobolPoints } from './sobol.js';
 export { type SymmetricSpline, symmetricSpline } from './spline.js';

@@ -263,7 +263,9 @@ export function predictPolar(boat: Boat, request: Partial<PolarRequest> = {}): P
       }
       const state = describeState(sets[k]!, windSpeed, angle, outcomes[k]![i]![j] as Solution);
       const other = sweep.slower[i]![j]!;
-      return Number.isNaN(other) ? state : { ...state, slowerSpeed: other };
+      if (Number.isNaN(other)) return state;
+      const note = `also stays at ${(other / KNOT).toFixed(2)} kn: she can stay planing, but may not get there by herself`;
+      return { ...state, slowerSpeed: other, notes: [...state.notes, note] };
     }),
   );
   const optimum = (i: number, which: 'up' | 'down'): SailingResult => {

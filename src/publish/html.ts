@@ -352,6 +352,7 @@ ${note === '' ? '' : `<p class="soft note">${escapeHtml(note)}</p>`}
 <h2 id="targets-title">Best VMG</h2>
 ${targetHtml('To windward', polar.bestUp, d)}
 ${targetHtml('To leeward', polar.bestDown, d)}
+${targetHtml('Fastest angle', polar.fastest, d)}
 <h3>How to read it</h3>
 <dl>
 <dt>TWS, TWA</dt><dd>true wind speed, and angle from the course through the water</dd>

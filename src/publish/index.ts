@@ -7,6 +7,13 @@ export {
   METHODS,
   type Method,
 } from './cautions.js';
+export {
+  type ComparisonReport,
+  comparisonJson,
+  comparisonPage,
+  comparisonText,
+  htmlTable,
+} from './comparison.js';
 export { crossoverCsv, crossoverHtml } from './crossover.js';
 export { csvText, POLAR_COLUMNS, polarCsv } from './csv.js';
 export { delimitedTable } from './delimited.js';
@@ -23,7 +30,14 @@ export { type BoatFacts, boatFacts, figures, type PolarReport, polarReport } fro
 export { RESISTANCE_PARTS, type ResistanceReport, resistanceCsv, resistanceReport } from './resistance.js';
 export { type SailReport, sailReport } from './sail-report.js';
 export { sailChartsHtml, sailCsv, sailPage, sailText } from './sail-view.js';
+export {
+  type SensitivityReport,
+  sensitivityJson,
+  sensitivityPage,
+  sensitivityText,
+} from './sensitivity.js';
 export { looksLikeJson, readSignalKPolar, SIGNAL_K_VERSION, signalKPolar } from './signal-k.js';
+export { sweepText } from './sweep.js';
 export * from './table-format.js';
 export {
   deratingText,

@@ -75,6 +75,7 @@ export function polarJson(report: PolarReport): string {
       tws_kn: rounded(toKnots(polar.tws[i]!)),
       best_vmg_up: state(polar.bestUp[i]!),
       best_vmg_down: state(polar.bestDown[i]!),
+      fastest: state(polar.fastest[i]!),
       states: row.map(state),
     })),
     error_bands: {

@@ -17,7 +17,7 @@ function bends(name: (typeof DEMO_BOATS)[number], tws: readonly number[], twa: r
   const scale = Math.sqrt(boat.spec.gravity * boat.hull.form.lwl);
   const polar = predictPolar(boat, { tws: tws.map((v) => v * KNOT), twa: twa.map((a) => a * DEG) });
   const line = tws.length === 1 ? polar.results[0]! : polar.results.map((row) => row[0]!);
-  const out: { at: string; bend: number; froude: number }[] = [];
+  const out: { at: string; bend: number; froude: number; named: boolean }[] = [];
   for (let i = 2; i < line.length; i++) {
     const [a, b, c] = [line[i - 2]!, line[i - 1]!, line[i]!];
     if (a.status !== 'balanced' || b.status !== 'balanced' || c.status !== 'balanced') continue;
@@ -25,6 +25,7 @@ function bends(name: (typeof DEMO_BOATS)[number], tws: readonly number[], twa: r
       at: `${name} ${(b.tws / KNOT).toFixed(2)} kn, ${(b.twa / DEG).toFixed(2)} deg`,
       bend: Math.abs(c.speed - 2 * b.speed + a.speed) / b.speed,
       froude: b.speed / scale,
+      named: a.regime !== c.regime || a.sailSet !== c.sailSet,
     });
   }
   expect(out.length).toBeGreaterThan(0.8 * (line.length - 2));
@@ -39,9 +40,9 @@ describe('polars in small steps', () => {
         ...bends(name, range(4, 24, 0.25), [100]),
         ...bends(name, range(4, 24, 0.25), [45]),
       ]) {
-        // At Froude number 0.60 the regression ends and planing takes over: there the speed may rise quickly.
+        // Where regime or sails change the slope may, a little. At Froude number 0.60 the regression ends and planing takes over: there the speed may rise quickly.
         const planing = b.froude > 0.5 && b.froude < 0.75;
-        expect(b.bend, b.at).toBeLessThan(planing ? 0.08 : 0.012);
+        expect(b.bend, b.at).toBeLessThan(planing ? 0.08 : b.named ? 0.02 : 0.012);
       }
     });
   }
