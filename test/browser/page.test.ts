@@ -148,7 +148,7 @@ describe('the page in a browser', () => {
       `document.getElementById('polar').data.map((t) => t.r.filter((v) => v !== null).length)`,
     )) as number[];
     expect(points).toHaveLength(2 * polar.tws.length);
-    expect(await page.locator('#polar .scatterlayer .trace').count()).toBe(2 * polar.tws.length);
+    expect(await page.locator('#polar .scatterlayer .trace').count()).toBe(3 * polar.tws.length);
     points.forEach((count, k) => {
       const balanced = polar.results[k >> 1]!.filter((r) => r.status === 'balanced').length;
       if (k % 2 === 0) expect(count).toBeGreaterThanOrEqual(balanced);

@@ -86,7 +86,7 @@ describe('polar', () => {
     const csv = readFileSync(join(folder.path, 'reports', 'keelboat-polar.csv'), 'utf8')
       .trimEnd()
       .split('\r\n');
-    expect(csv).toHaveLength(1 + 2 * (6 + 2));
+    expect(csv).toHaveLength(1 + 2 * (6 + 3));
     // The figures of table and results are the same ones.
     const json = JSON.parse(readFileSync(join(folder.path, 'reports', 'keelboat-results.json'), 'utf8'));
     expect(json.tws_kn).toEqual([8, 12]);
@@ -307,7 +307,7 @@ describe('the command line', () => {
     [['polar'], /name a boat file/],
     [['polar', 'x', '--decimals', '9'], /--decimals: "9" is not a whole number from 0 to 6/],
     [['new', 'x', '--kind', 'ship'], /--kind: "ship" is none of dinghy, keelboat/],
-    [[], /name a command: polar, explain, check, sails, new/],
+    [[], /name a command: polar, explain, compare/],
     [['constructor'], /there is no command "constructor"/],
     [['polar', 'x', '--__proto__', '1'], /there is no option "--__proto__"/],
   ])('answers %j with one message and code 2', async (args, wanted) => {

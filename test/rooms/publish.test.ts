@@ -155,7 +155,7 @@ describe('the polar as comma-separated values', () => {
   it('holds every state of the grid and the best ones, each with all columns', () => {
     const rows = readCsv(polarCsv(report));
     expect(rows[0]).toEqual([...POLAR_COLUMNS]);
-    expect(rows).toHaveLength(1 + 2 * (5 + 2));
+    expect(rows).toHaveLength(1 + 2 * (5 + 3));
     for (const row of rows) expect(row).toHaveLength(POLAR_COLUMNS.length);
     const at = (row: string[], column: (typeof POLAR_COLUMNS)[number]): string =>
       row[POLAR_COLUMNS.indexOf(column)]!;
