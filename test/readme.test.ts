@@ -22,7 +22,19 @@ describe('the README', () => {
   });
 
   it('shows at least one use of every command', () => {
-    for (const c of ['polar', 'explain', 'check', 'new', 'targets', 'export', 'table']) {
+    for (const c of [
+      'polar',
+      'explain',
+      'check',
+      'sails',
+      'new',
+      'targets',
+      'export',
+      'table',
+      'compare',
+      'sensitivity',
+      'sweep',
+    ]) {
       expect(
         commands.some((line) => line.startsWith(c)),
         c,
@@ -31,7 +43,8 @@ describe('the README', () => {
   });
 
   it.each(commands)('npx polarwright %s', (line) => {
-    const r = spawnSync(process.execPath, [bin, ...line.split(/\s+/)], { cwd: folder, encoding: 'utf8' });
+    const words = (line.match(/"[^"]*"|\S+/g) ?? []).map((w) => w.replaceAll('"', ''));
+    const r = spawnSync(process.execPath, [bin, ...words], { cwd: folder, encoding: 'utf8' });
     expect(r.stderr).not.toMatch(/at .*\.js:\d+/);
     expect(r.status, r.stderr).toBe(0);
     expect(r.stdout.length + r.stderr.length).toBeGreaterThan(20);

@@ -487,6 +487,8 @@ async function suggestion(word: string, known: readonly string[]): Promise<strin
 interface Words {
   readonly command: string | undefined;
   readonly words: readonly string[];
+  /** What follows the command's first word, in order. */
+  readonly rest: readonly string[];
 }
 
 /**
@@ -535,6 +537,7 @@ async function lookOver(argv: readonly string[]): Promise<Words> {
   const plain = (w: string): string => (w === '-' ? STANDARD : w);
   return {
     command: name,
+    rest: files.slice(1),
     words: [
       ...front.map(plain),
       ...rear.map((w) => (w.length > 1 && w.startsWith('-') ? `./${w}` : plain(w))),
@@ -587,7 +590,7 @@ function takesValue(word: string): boolean {
  * @throws UsageError on anything that is not understood
  */
 export async function choose(argv: readonly string[], version: string): Promise<Chosen> {
-  const { command: named, words } = await lookOver(argv);
+  const { command: named, words, rest } = await lookOver(argv);
   let chosen: (() => Promise<void>) | undefined;
   const width = Math.min(100, process.stdout.columns ?? 100);
   const parser = yargs()
@@ -644,7 +647,9 @@ export async function choose(argv: readonly string[], version: string): Promise<
         return y;
       },
       (parsed) => {
-        chosen = () => command.run(parsed as Readonly<Record<string, unknown>>);
+        // The parser keeps only the last of several words: they are taken as they were looked over.
+        const several = command.rest === undefined ? {} : { [command.rest.name]: rest };
+        chosen = () => command.run({ ...(parsed as Readonly<Record<string, unknown>>), ...several });
       },
     );
   }

@@ -52,13 +52,12 @@ describe('compare', () => {
     expect(page).not.toMatch(/NaN|undefined|<script/);
   });
 
-  it('says the same with any number of workers, and for the same seed only', () => {
-    const run = (...more: string[]) =>
-      runCommand(['compare', boat, 'heavy', ...QUICK, '--draws', '45', '--json', ...more]).out;
-    const one = run('--workers', '1');
-    expect(JSON.parse(one).ranking).toHaveLength(2);
-    expect(run('--workers', '3')).toBe(one);
-    expect(run('--workers', '1', '--seed', '2')).not.toBe(one);
+  it('says the same with any number of workers, and for the same seed only', async () => {
+    const args = ['compare', boat, 'heavy', ...QUICK, '--draws', '24', '--json'];
+    const one = await runMain(args);
+    expect(JSON.parse(one.out).ranking).toHaveLength(2);
+    expect(runCommand([...args, '--workers', '3']).out).toBe(one.out);
+    expect((await runMain([...args, '--seed', '2'])).out).not.toBe(one.out);
   });
 
   it('takes all variants of the file, files of differences and whole boats', async () => {
@@ -178,12 +177,11 @@ describe('sweep', () => {
   const VARY = 'crew.mass_each = 70 to 90 kg in 4 steps; rig.mast_height = plus 0 to 0.2 m in 3 steps';
   const SWEEP = ['sweep', '--vary', VARY, '--course', 'reach', '--wind', '8'];
   const sweep = (out: string, ...more: string[]) =>
-    runCommand([...SWEEP, boat, '--out', join(folder.path, out), ...more]);
-  const results = (out: string, name = 'boat-sweep.jsonl') =>
-    readFileSync(join(folder.path, out, name), 'utf8');
+    runMain([...SWEEP, boat, '--out', join(folder.path, out), ...more]);
+  const results = (out: string) => readFileSync(join(folder.path, out, 'boat-sweep.jsonl'), 'utf8');
 
-  it('writes one line of JSON for each variant, the same with any number of workers, in shards or whole', () => {
-    const whole = sweep('one', '--workers', '1');
+  it('writes one line of JSON for each variant, the same with any number of workers, in shards or whole', async () => {
+    const whole = await sweep('one');
     expect(whole.code).toBe(0);
     const lines = results('one')
       .trimEnd()
@@ -191,26 +189,22 @@ describe('sweep', () => {
       .map((l) => JSON.parse(l));
     expect(lines.map((l) => l.number)).toEqual(Array.from({ length: 12 }, (_, i) => i));
     expect(lines[5].changes).toMatchObject({ 'crew.mass_each': expect.stringMatching(/^76\.6/) });
-    sweep('two', '--workers', '2');
+    runCommand([...SWEEP, boat, '--out', join(folder.path, 'two'), '--workers', '2']);
     expect(results('two')).toBe(results('one'));
-    for (const part of ['2/3', '1/3', '3/3'])
-      expect(sweep('parts', '--workers', '1', '--shard', part).code).toBe(0);
-    const merged = sweep('parts', '--merge', '3');
+    for (const part of ['2/3', '1/3', '3/3']) expect((await sweep('parts', '--shard', part)).code).toBe(0);
+    const merged = await sweep('parts', '--merge', '3');
     expect(merged.code).toBe(0);
     expect(results('parts')).toBe(results('one'));
     expect(merged.out.replaceAll('parts', 'one')).toBe(whole.out);
   });
 
-  it('refuses to go on with the results of another sweep, unless it is to begin anew', () => {
-    sweep('out', '--workers', '1');
-    const other = ['--wind', '9'];
-    const args = SWEEP.slice(0, -2);
-    const again = runCommand([...args, boat, '--out', join(folder.path, 'out'), ...other]);
+  it('refuses to go on with the results of another sweep, unless it is to begin anew', async () => {
+    await sweep('out');
+    const other = [...SWEEP.slice(0, -2), boat, '--out', join(folder.path, 'out'), '--wind', '9'];
+    const again = await runMain(other);
     expect(again.code).toBe(2);
     expect(again.err.replace(/\s+/g, ' ')).toMatch(/belongs to another sweep .*--restart replaces it/);
-    expect(runCommand([...args, boat, '--out', join(folder.path, 'out'), ...other, '--restart']).code).toBe(
-      0,
-    );
+    expect((await runMain([...other, '--restart'])).code).toBe(0);
   });
 
   it('reports a variant that is no boat in its line', async () => {
