@@ -250,7 +250,10 @@ function boatHtml(report: PolarReport): string {
         return `<tr>${td(oneLine(r.quantity), 'text wide')}${td(value)}${td(r.unit, 'text')}</tr>`;
       })
       .join('');
-    return `<table><caption>${escapeHtml(oneLine(section))}</caption><thead><tr>${th('quantity', '', true)}${th('value')}${th('unit', '', true)}</tr></thead><tbody>${rows}</tbody></table>`;
+    return scrolling(
+      `Quantities: ${oneLine(section)}`,
+      `<table><caption>${escapeHtml(oneLine(section))}</caption><thead><tr>${th('quantity', '', true)}${th('value')}${th('unit', '', true)}</tr></thead><tbody>${rows}</tbody></table>`,
+    );
   });
   const estimates = boat.estimates
     .map(
@@ -345,7 +348,7 @@ ${note === '' ? '' : `<p class="soft note">${escapeHtml(note)}</p>`}
 <section id="diagram" aria-labelledby="diagram-title">
 <h2 id="diagram-title">Polar diagram</h2>
 <p class="soft">Boat speed in knots outward, true wind angle from the course around; diamonds mark best VMG. Each line bears its true wind speed where it ends. Gaps are angles without a balanced state.</p>
-<div id="polar" role="img" aria-label="Polar diagram: boat speed over true wind angle, one line for each wind speed. The tables on this page hold the same figures."></div>
+<div id="polar" role="figure" aria-label="Polar diagram: boat speed over true wind angle, one line for each wind speed. The tables on this page hold the same figures."></div>
 <noscript><p>The diagram needs scripts; the tables hold the same figures.</p></noscript>
 </section>
 <section id="targets" aria-labelledby="targets-title">
