@@ -148,7 +148,7 @@ describe('the page in a browser', () => {
       `document.getElementById('polar').data.map((t) => t.r.filter((v) => v !== null).length)`,
     )) as number[];
     expect(points).toHaveLength(2 * polar.tws.length);
-    expect(await page.locator('#polar .scatterlayer .trace').count()).toBe(3 * polar.tws.length);
+    expect(await page.locator('#polar .scatterlayer .trace').count()).toBe(2 * polar.tws.length);
     points.forEach((count, k) => {
       const balanced = polar.results[k >> 1]!.filter((r) => r.status === 'balanced').length;
       if (k % 2 === 0) expect(count).toBeGreaterThanOrEqual(balanced);
@@ -174,7 +174,7 @@ describe('the page in a browser', () => {
 
   it('holds the targets, every state, and the cause where nothing balances', async () => {
     const { page } = open;
-    expect(await page.locator('table.targets tbody tr').count()).toBe(2 * polar.tws.length);
+    expect(await page.locator('table.targets tbody tr').count()).toBe(3 * polar.tws.length);
     expect(await page.locator('#states details').count()).toBe(polar.tws.length);
     const rows = await page.locator('table.states tbody tr:not(.best)').count();
     expect(rows).toBeGreaterThanOrEqual(polar.tws.length * (polar.twa.length - 2));
