@@ -1,0 +1,14 @@
+import { readFileSync } from 'node:fs';
+import { readBoat, boatWithFactors, NO_FACTORS } from './src/boat/index.ts';
+import { createSetSolvers } from './src/equilibrium/index.ts';
+import { namedCourse, windTable, variantTimes, timesUnderFactors, factorDraws, courseTime } from './src/racecourse/index.ts';
+const KN=1852/3600; const cpu=()=>{const u=process.cpuUsage(); return (u.user+u.system)/1000};
+const b=readBoat(readFileSync(`boats/keelboat.yaml`,'utf8'));
+const course=namedCourse('windward-leeward');
+const wind=windTable('', [6,10,14,18].map(k=>({tws:k*KN,share:1})));
+const draw=factorDraws(1); const ds=Array.from({length:60},(_,i)=>draw(i).factors);
+const known=variantTimes(b,course,wind); 
+timesUnderFactors(b,course,wind.tws,known,ds.slice(0,20));
+let t=cpu(); timesUnderFactors(b,course,wind.tws,known,ds); console.log('cpu ms/draw', (cpu()-t)/61, 'starts', known.anchors.flat().reduce((s,a)=>s+a.starts.length,0), known.anchors.flat().length);
+t=cpu(); for (const f of ds) createSetSolvers(boatWithFactors(b,f)); console.log('prepare all sets cpu ms', (cpu()-t)/60);
+const pts=known.anchors[0].map(a=>({twa:a.twa,speed:3})); t=cpu(); for(let i=0;i<100;i++) courseTime([...pts,...pts.flatMap(p=>[1,2,3,4,5].map(k=>({twa:p.twa+k*.01,speed:3})))],course); console.log('courseTime cpu ms',(cpu()-t)/100);
