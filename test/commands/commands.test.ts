@@ -285,7 +285,7 @@ describe('the command line', () => {
     [['polar'], /name a boat file/],
     [['polar', 'x', '--decimals', '9'], /--decimals: "9" is not a whole number from 0 to 6/],
     [['new', 'x', '--kind', 'ship'], /--kind: "ship" is none of dinghy, keelboat/],
-    [[], /name a command: polar, explain, check, new/],
+    [[], /name a command: polar, explain, compare, sensitivity, sweep, check, new/],
     [['constructor'], /there is no command "constructor"/],
     [['polar', 'x', '--__proto__', '1'], /there is no option "--__proto__"/],
   ])('answers %j with one message and code 2', async (args, wanted) => {
