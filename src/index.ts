@@ -9,3 +9,4 @@ export {
   solveState,
 } from './equilibrium/index.js';
 export { type Polar, type PolarRequest, predictPolar } from './polar/index.js';
+export * from './racecourse/index.js';

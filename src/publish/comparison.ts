@@ -262,6 +262,7 @@ export function comparisonJson(r: ComparisonReport): string {
       time_s: clean(s.secondsPerMile),
       difference_s: clean(s.difference),
       spread_s: clean(s.deviation),
+      spread_by_wind_s: s.windDeviations.map(clean),
       worst:
         s.worst === undefined ? null : { tws_kn: clean(toKnots(s.worst.tws)), loss_s: clean(s.worst.loss) },
       against_base:
@@ -286,6 +287,7 @@ export function comparisonJson(r: ComparisonReport): string {
       difference_by_wind_and_point_s: c.differences[s.entrant]!.map((row) => row.map(clean)),
       warnings: r.boats[s.entrant]!.warnings.map(warningText),
     })),
+    quicker: Object.fromEntries(c.quicker.map((row, i) => [c.names[i]!, row.map(clean)])),
     points_of_sail_deg: POINTS_OF_SAIL.map((a) => clean(degrees(a))),
     crossovers: c.crossovers.map((x) => ({
       tws_kn: clean(toKnots(x.tws)),
@@ -406,9 +408,11 @@ export function comparisonPage(r: ComparisonReport): string {
   );
   const list = (items: readonly string[]): string =>
     items.length === 0 ? '' : `<ul>${items.map((f) => `<li>${escapeHtml(f)}</li>`).join('')}</ul>`;
+  const gaps = c.times.slice(1).map((row) => row.map((t, i) => t - c.times[0]![i]!));
+  const told = gaps.flat().filter((d) => Number.isFinite(d));
   const curves =
-    c.wind.tws.length < 2
-      ? '<p class="soft">One wind only: no curve.</p>'
+    c.wind.tws.length < 2 || !told.some((d) => d !== 0)
+      ? '<p class="soft">No curve of the differences: one wind only, or no difference.</p>'
       : lineChartSvg(
           {
             title: 'Time on the course less that of the base, over wind speed',
@@ -418,17 +422,12 @@ export function comparisonPage(r: ComparisonReport): string {
             lines: c.names.slice(1).map((name, k) => ({
               name: oneLine(name),
               x: c.wind.tws.map(toKnots),
-              y: c.times[k + 1]!.map((t, i) => t - c.times[0]![i]!),
+              y: gaps[k]!,
               colour: (2 * k + 1) % 9,
               ...(k % 3 > 0 ? { dash: k % 3 === 1 ? '8 4' : '2 4' } : {}),
             })),
-            yFrom: Math.min(
-              0,
-              ...c.times
-                .slice(1)
-                .flatMap((row) => row.map((t, i) => t - c.times[0]![i]!))
-                .filter(Number.isFinite),
-            ),
+            // Room below zero where nothing is quicker: the scale needs a height.
+            yFrom: Math.min(-0.05 * Math.max(...told.map(Math.abs)), ...told),
           },
           'differences-chart',
         );
@@ -461,6 +460,14 @@ export function comparisonPage(r: ComparisonReport): string {
       `<td class="text wide">${escapeHtml(spread.source)}</td>`,
     ]),
   );
+  const pairs = htmlTable(
+    'How often the boat of the row is quicker than that of the column',
+    ['', ...c.names.map(e)],
+    c.names.map((name, i) => [
+      e(name),
+      ...c.quicker[i]!.map((p, j) => (i === j ? '' : Number.isFinite(p) ? chance(p) : '-')),
+    ]),
+  );
   const warnings = r.boats.flatMap((b) => b.warnings.map((w) => `${oneLine(b.name)}: ${warningText(w)}`));
   return staticPage({
     title: `${oneLine(c.names[0]!)}: variants compared`,
@@ -481,7 +488,7 @@ export function comparisonPage(r: ComparisonReport): string {
             {
               id: 'certainty',
               heading: 'How sure',
-              html: `<p>${escapeHtml(certaintySentence(c))}</p><p>${escapeHtml(WHAT_IT_COVERS)}</p>${shares}${list(
+              html: `<p>${escapeHtml(certaintySentence(c))}</p><p>${escapeHtml(WHAT_IT_COVERS)}</p>${pairs}${shares}${list(
                 c.ranking
                   .filter((s) => (s.againstBase?.leftOut ?? 0) + (s.againstBase?.partly ?? 0) > 0)
                   .map(

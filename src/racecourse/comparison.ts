@@ -29,8 +29,9 @@ export interface Standing {
   readonly difference: number;
   /** Where it loses most against the quickest of all: wind [m/s], and what it costs there. */
   readonly worst: { readonly tws: number; readonly loss: number } | undefined;
-  /** Standard deviation of its own time over the draws; NaN without draws. */
+  /** Standard deviation of its own time over the draws; NaN without draws. The same in each wind. */
   readonly deviation: number;
+  readonly windDeviations: readonly number[];
   /** Against the base; undefined for the base itself and without draws. */
   readonly againstBase: PairCertainty | undefined;
   /** Winds [m/s] in which it cannot sail the course, with the reason. */
@@ -58,6 +59,8 @@ export interface Comparison {
   /** Difference from the base [entrant][wind][point of sail], s per nautical mile; NaN where one cannot sail it. */
   readonly differences: readonly (readonly (readonly number[])[])[];
   readonly crossovers: readonly Crossover[];
+  /** Probability that the first is quicker than the second [entrant][entrant]; NaN without draws. */
+  readonly quicker: readonly (readonly number[])[];
   readonly spreads: readonly Spread[];
   readonly draws: number;
   readonly seed: number;
@@ -131,6 +134,7 @@ export function comparison(
       difference: totals[k]!.secondsPerMile - totals[0]!.secondsPerMile,
       worst,
       deviation: drawn ? ownSpread(e.drawn, wind).deviation : Number.NaN,
+      windDeviations: drawn ? windDeviations(e, wind) : [],
       againstBase: drawn && k > 0 ? pairCertainty(e.drawn, base.drawn, wind, sampling.z) : undefined,
       unsailed: e.known.times.flatMap((t, i) => (t.ok ? [] : [{ tws: wind.tws[i]!, reason: t.reason }])),
     };
@@ -153,6 +157,11 @@ export function comparison(
     times,
     differences: legs.map((rows) => rows.map((row, i) => row.map((v, j) => v - legs[0]![i]![j]!))),
     crossovers,
+    quicker: entrants.map((a) =>
+      entrants.map((b) =>
+        !drawn ? Number.NaN : a === b ? 0.5 : pairCertainty(a.drawn, b.drawn, wind, sampling.z).quicker,
+      ),
+    ),
     spreads,
     draws: base.drawn.length,
     seed: sampling.seed,
@@ -160,17 +169,7 @@ export function comparison(
   };
 }
 
-/** Probability that one entrant is quicker than another, and the rest that is to be known of the pair. */
-export function certaintyBetween(
-  a: Entrant,
-  b: Entrant,
-  wind: WindTable,
-  z: readonly Float64Array[],
-): PairCertainty {
-  return pairCertainty(a.drawn, b.drawn, wind, z);
-}
-
-/** Error bands of one boat's own times: standard deviation over the draws in each wind. */
-export function windDeviations(e: Entrant, wind: WindTable): number[] {
+/** Spread of one boat's own times: standard deviation over the draws in each wind. */
+function windDeviations(e: Entrant, wind: WindTable): number[] {
   return wind.tws.map((_, i) => deviationOf(e.drawn.map((d) => d[i]!).filter((v) => Number.isFinite(v))));
 }

@@ -7,13 +7,11 @@ export {
 export {
   type Comparison,
   type Crossover,
-  certaintyBetween,
   comparison,
   crossoversOf,
   type Entrant,
   POINTS_OF_SAIL,
   type Standing,
-  windDeviations,
 } from './comparison.js';
 export {
   COURSE_NAMES,

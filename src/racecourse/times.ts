@@ -64,15 +64,18 @@ export function legTime(
   }
   let best = Number.MAX_VALUE;
   let found: LegTime | undefined;
-  const take = (slowness: number, cost: number, manner: LegManner, parts: readonly LegPart[]): void => {
-    const seconds = NAUTICAL_MILE * slowness + cost;
-    if (!(seconds < best * (1 - GAIN))) return;
-    best = seconds;
-    found = { ok: true, secondsPerMile: seconds, manner, parts };
-  };
+  const quicker = (seconds: number): boolean => seconds < best * (1 - GAIN);
   for (const { p } of sided) {
-    if (Math.abs(p.twa - twa) > SAME) continue;
-    take(1 / p.speed, 0, 'direct', [{ ...p, side: 1, slowness: 1 / p.speed }]);
+    const slowness = 1 / p.speed;
+    const seconds = NAUTICAL_MILE * slowness;
+    if (Math.abs(p.twa - twa) > SAME || !quicker(seconds)) continue;
+    best = seconds;
+    found = {
+      ok: true,
+      secondsPerMile: seconds,
+      manner: 'direct',
+      parts: [{ twa: p.twa, speed: p.speed, side: 1, slowness }],
+    };
   }
   const tackCost = manoeuvres.tacksPerMile * manoeuvres.tack;
   const gybeCost = manoeuvres.gybesPerMile * manoeuvres.gybe;
@@ -84,16 +87,22 @@ export function legTime(
       if (Math.abs(det) < 1e-12 * a.p.speed * b.p.speed) continue;
       const s = (ex * b.y - ey * b.x) / det;
       const t = (a.x * ey - a.y * ex) / det;
-      if (!(s > SAME * t && t > SAME * s)) continue;
+      if (!(s > SAME * t && t > SAME * s) || !quicker(NAUTICAL_MILE * (s + t))) continue;
       const crosses = a.y * b.y < 0;
       // Where the line between the two crosses the wind's axis: ahead it is a tack, astern a gybe.
       const ahead = a.x * Math.abs(b.y) + b.x * Math.abs(a.y) > 0;
-      const manner = crosses ? (ahead ? 'tacking' : 'gybing') : 'two angles';
-      const cost = crosses ? (ahead ? tackCost : gybeCost) : 0;
-      take(s + t, cost, manner, [
-        { ...a.p, side: a.side, slowness: s },
-        { ...b.p, side: b.side, slowness: t },
-      ]);
+      const seconds = NAUTICAL_MILE * (s + t) + (crosses ? (ahead ? tackCost : gybeCost) : 0);
+      if (!quicker(seconds)) continue;
+      best = seconds;
+      found = {
+        ok: true,
+        secondsPerMile: seconds,
+        manner: crosses ? (ahead ? 'tacking' : 'gybing') : 'two angles',
+        parts: [
+          { twa: a.p.twa, speed: a.p.speed, side: a.side, slowness: s },
+          { twa: b.p.twa, speed: b.p.speed, side: b.side, slowness: t },
+        ],
+      };
     }
   }
   return found ?? { ok: false, reason: 'no mix of balanced states makes this leg good' };

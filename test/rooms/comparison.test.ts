@@ -56,6 +56,10 @@ describe('a comparison', () => {
     for (const v of c.differences[1]!.flat()) expect(Number.isNaN(v) || v === 0).toBe(true);
     expect(c.differences[1]!.flat().filter((v) => v === 0).length).toBeGreaterThan(20);
     expect(c.crossovers).toEqual([]);
+    expect(c.quicker).toEqual([
+      [0.5, 0.5],
+      [0.5, 0.5],
+    ]);
   });
 
   it('does not depend on the order in which the variants are named', () => {
@@ -63,6 +67,8 @@ describe('a comparison', () => {
     const two = run([base, bigger, heavy]);
     const bare = (c: Comparison) => c.ranking.map(({ entrant: _, ...s }) => s);
     expect(bare(two)).toEqual(bare(one));
+    expect(one.quicker[1]![2]).toBe(two.quicker[2]![1]);
+    expect(one.quicker[1]![2]! + one.quicker[2]![1]!).toBeCloseTo(1, 12);
     // Nor does a pair's difference on the base, but for its sign.
     const back = run([heavy, base]);
     const there = one.ranking.find((s) => s.name === 'heavy crew')!;
