@@ -96,6 +96,10 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
       json: { ...JSON_OPTION, describe: 'print the results as JSON, and write no files' },
       quiet: { type: 'boolean', describe: 'write the files, print nothing', default: false },
       decimals: { type: 'string', describe: 'decimals of speeds, 0 to 6 (2 in tables, 3 in the CSV)' },
+      draws: {
+        type: 'string',
+        describe: 'error bands on the page from so many draws of the uncertain constants (32 will do)',
+      },
     },
     run: async (argv) => {
       const { polarCommand } = await import('./polar-command.js');
@@ -107,6 +111,7 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
         json: argv.json === true,
         quiet: argv.quiet === true,
         decimals: text(argv.decimals),
+        draws: text(argv.draws),
       });
     },
   },

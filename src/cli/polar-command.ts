@@ -15,8 +15,10 @@ import {
   wrapped,
   writeFiles,
 } from '../publish/index.js';
+import { speedBands } from '../racecourse/index.js';
 import { fromKnots, radians } from '../units/index.js';
 import { loadBoat, reportName } from './boat-input.js';
+import { UsageError } from './errors.js';
 import { readDecimals, readList, WIND_ANGLES, WIND_SPEEDS } from './grid.js';
 import { print, printRaw } from './output.js';
 
@@ -28,6 +30,15 @@ export interface PolarArguments {
   readonly json: boolean;
   readonly quiet: boolean;
   readonly decimals: string | undefined;
+  /** Draws of the uncertain constants for error bands; undefined: none. */
+  readonly draws: string | undefined;
+}
+
+function readDraws(text: string | undefined): number {
+  if (text === undefined) return 0;
+  if (!/^\d{1,4}$/.test(text.trim()) || Number(text) > 2000)
+    throw new UsageError(`--draws: "${text}" is not a whole number from 0 to 2000`);
+  return Number(text);
 }
 
 /** Predicts the polar, writes its files, prints the targets. */
@@ -37,7 +48,9 @@ export function polarCommand(a: PolarArguments): void {
   const decimals = readDecimals(a.decimals);
   const boat = loadBoat(a.boat);
   const polar = predictPolar(boat, { ...(tws && { tws }), ...(twa && { twa }) });
-  const report = polarReport(boat, polar);
+  const draws = readDraws(a.draws);
+  const bands = draws > 0 ? { draws, winds: speedBands(boat, polar, draws) } : undefined;
+  const report = polarReport(boat, polar, bands);
   if (a.json) {
     printRaw(polarJson(report));
     return;

@@ -69,6 +69,52 @@ function pointOf(r: SailingResult, d: Decimals): Point {
   return { angle, speed: rounded(f.speedKn, 6), facts: hoverFacts(f, d) };
 }
 
+/** Outline of the error band of one wind's curve, out along the high speeds and back along the low ones. */
+function bandOf(report: PolarReport, i: number): { angle: number[]; speed: number[] } | null {
+  const band = report.bands?.winds[i];
+  if (band === undefined || band.length < 2) return null;
+  const out = { angle: [] as number[], speed: [] as number[] };
+  const add = (share: 'low' | 'high', b: (typeof band)[number]): void => {
+    const state = report.polar.results[i]!.find((r) => r.twa === b.twa)!;
+    const f = figures(state);
+    if (f.status === 'unbalanced') return;
+    out.angle.push(rounded(f.twaDeg, 7) ?? 0);
+    out.speed.push(rounded(f.speedKn * b[share], 6) ?? 0);
+  };
+  for (const b of band) add('high', b);
+  for (const b of [...band].reverse()) add('low', b);
+  return out;
+}
+
+/** What the bands say, in words and as a table by point of sail. */
+function bandsHtml(report: PolarReport): string {
+  const { bands, polar } = report;
+  if (bands === undefined)
+    return '<p class="soft">No bands were computed for this page: the command has an option for them.</p>';
+  const points = [
+    { name: 'upwind', from: 0, to: 60 },
+    { name: 'reaching', from: 60, to: 120 },
+    { name: 'downwind', from: 120, to: 181 },
+  ];
+  const rows = polar.tws
+    .map((_, i) => {
+      const cells = points.map((p) => {
+        const own = (bands.winds[i] ?? []).filter((b) => {
+          const deg = (b.twa * 180) / Math.PI;
+          return deg >= p.from && deg < p.to;
+        });
+        if (own.length === 0) return td('');
+        const low = own.reduce((s, b) => s + b.low, 0) / own.length - 1;
+        const high = own.reduce((s, b) => s + b.high, 0) / own.length - 1;
+        return td(`${fixed(100 * low, 1)} to +${fixed(100 * high, 1)} %`);
+      });
+      return `<tr><th scope="row">${fixed(figures(polar.bestUp[i]!).twsKn, 1)}</th>${cells.join('')}</tr>`;
+    })
+    .join('');
+  return `<p>The shaded bands of the diagram hold eight in ten of ${bands.draws} predictions, made anew with the model's uncertain constants drawn at random (hull, sails, foils, windage, righting moment, wind over height). Waves, gusts and the crew's skill are not in them.</p>
+${scrolling('Bands', `<table><caption>Band of boat speed, by wind (kn) and point of sail</caption><thead><tr>${th('TWS', 'kn')}${points.map((p) => th(p.name)).join('')}</tr></thead><tbody>${rows}</tbody></table>`)}`;
+}
+
 /** Least distance of two labels below each other, as a share of the diagram's radius. */
 const LABEL_ROOM = 0.038;
 
@@ -92,6 +138,7 @@ function diagramData(report: PolarReport, d: Decimals): unknown {
       speed: points.map((p) => p.speed),
       facts: points.map((p) => p.facts),
       points,
+      band: bandOf(report, i),
       best: {
         angle: best.map((p) => p.angle),
         speed: best.map((p) => p.speed),
@@ -406,6 +453,7 @@ ${boatHtml(report)}
 <h2 id="trust-title">How far to trust it</h2>
 <table class="narrow"><caption>Error to expect without calibration</caption><thead><tr>${th('where', '', true)}${th('share of boat speed')}</tr></thead><tbody>${ERROR_BANDS.map((b) => `<tr>${td(b.where, 'text wide')}${td(`± ${b.band}`)}</tr>`).join('')}</tbody></table>
 <p class="soft">${escapeHtml(ERROR_BANDS_SOURCE)}</p>
+${bandsHtml(report)}
 </section>
 <section id="cautions" class="cautions" aria-labelledby="cautions-title">
 <h2 id="cautions-title">Cautions</h2>

@@ -18,6 +18,10 @@ export const PAGE_SCRIPT = `
     data.curves.forEach(function (c, i) {
       var colour = colours[i % colours.length];
       var dash = data.dashes[i % data.dashes.length];
+      if (c.band) out.push({
+        type: 'scatterpolar', mode: 'lines', name: c.name + ', band', legendgroup: c.name, showlegend: false, hoverinfo: 'skip',
+        r: c.band.speed, theta: c.band.angle, fill: 'toself', fillcolor: colour + '22', line: { width: 0, color: colour }
+      });
       out.push({
         type: 'scatterpolar', mode: c.mode, name: c.name, legendgroup: c.name,
         r: c.speed, theta: c.angle, text: c.label, textposition: c.labelPlace, cliponaxis: false,

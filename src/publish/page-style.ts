@@ -31,7 +31,7 @@ a { color: var(--accent); }
 section, .sheet {
   background: var(--sheet); border: 1px solid var(--rule); border-radius: 10px; padding: 20px 22px; margin: 0 0 18px;
 }
-.pair { display: grid; grid-template-columns: minmax(0, 5fr) minmax(0, 7fr); gap: 18px; align-items: start; }
+.pair { align-items: start; display: grid; grid-template-columns: minmax(0, 5fr) minmax(0, 7fr); gap: 18px; align-items: start; }
 .pair > section { margin-bottom: 18px; height: 100%; }
 #polar { width: 100%; height: 760px; }
 .scroll { overflow-x: auto; }
@@ -80,7 +80,7 @@ footer { color: var(--soft); font-size: 0.875rem; }
 .chart-key { width: 30px; height: 8px; margin-right: 6px; vertical-align: middle; }
 .chart-legend { list-style: none; padding: 0; display: flex; flex-wrap: wrap; gap: 2px 16px; font-size: 0.8125rem; margin-top: 6px; }
 @media (max-width: 1120px) {
-  .pair { grid-template-columns: minmax(0, 1fr); gap: 0; }
+  .pair { align-items: start; grid-template-columns: minmax(0, 1fr); gap: 0; }
   .pair > section { height: auto; }
 }
 @media (max-width: 560px) {
@@ -102,7 +102,7 @@ footer { color: var(--soft); font-size: 0.875rem; }
   .page { max-width: none; padding: 0; }
   nav { display: none; }
   section { border: 0; padding: 0; margin: 0 0 14pt; border-radius: 0; }
-  .pair { display: block; }
+  .pair { align-items: start; display: block; }
   .scroll { overflow: visible; }
   table { font-size: 8pt; }
   th, td { padding: 2px 5px; }

@@ -6,6 +6,7 @@ import {
   type SailingState,
 } from '../equilibrium/index.js';
 import { type Polar, polarWarnings } from '../polar/index.js';
+import type { SpeedBand } from '../racecourse/index.js';
 import { degrees, toKnots } from '../units/index.js';
 import { type ResistanceReport, resistanceReport } from './resistance.js';
 import { type RightingReport, rightingReport } from './righting.js';
@@ -27,6 +28,8 @@ export interface PolarReport {
   readonly resistance: ResistanceReport;
   readonly righting: RightingReport;
   readonly sails: SailReport;
+  /** How far the speeds may be off, by wind and angle; left out where it was not computed. */
+  readonly bands?: { readonly draws: number; readonly winds: readonly (readonly SpeedBand[])[] } | undefined;
   /** Force balances of a few chosen states. */
   readonly balances: readonly ForceBalance[];
 }
@@ -52,7 +55,7 @@ function chosenStates(polar: Polar): SailingState[] {
 }
 
 /** A boat and its polar, ready to be published. */
-export function polarReport(boat: Boat, polar: Polar): PolarReport {
+export function polarReport(boat: Boat, polar: Polar, bands?: PolarReport['bands']): PolarReport {
   const facts = boatFacts(boat);
   const warnings = [...facts.warnings, ...polarWarnings(boat, polar)];
   return {
@@ -61,6 +64,7 @@ export function polarReport(boat: Boat, polar: Polar): PolarReport {
     resistance: resistanceReport(boat),
     righting: rightingReport(boat, polar),
     sails: sailReport(boat),
+    bands,
     balances: chosenStates(polar).map((s) => forceBalance(boat, s)),
   };
 }

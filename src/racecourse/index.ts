@@ -1,3 +1,4 @@
+export { type SpeedBand, speedBands } from './bands.js';
 export {
   linearShares,
   type PairCertainty,
