@@ -3,6 +3,7 @@ export * from './boat/index.js';
 export {
   type ForceBalance,
   forceBalance,
+  type Held,
   type SailingResult,
   type SailingState,
   solveState,

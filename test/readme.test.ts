@@ -22,7 +22,19 @@ describe('the README', () => {
   });
 
   it('shows at least one use of every command', () => {
-    for (const c of ['polar', 'explain', 'check', 'new', 'compare', 'sensitivity', 'sweep']) {
+    for (const c of [
+      'polar',
+      'explain',
+      'check',
+      'sails',
+      'new',
+      'targets',
+      'export',
+      'table',
+      'compare',
+      'sensitivity',
+      'sweep',
+    ]) {
       expect(
         commands.some((line) => line.startsWith(c)),
         c,

@@ -16,8 +16,8 @@ import type { Boat, BoatSpec, Estimate } from './types.js';
  * Fluid-Dynamic Drag 1965, from memory); hull side 1.0, end 0.6 and boom 1.0: judgement.
  */
 const DRAG = { cylinder: 1.1, hullSide: 1.0, hullEnd: 0.6, boom: 1.0 } as const;
-/** Share of a mast's drag that the sail behind it takes away along its luff; judgement. */
-const MAST_SHIELD = 0.5;
+/** Share of a mast's drag that the sail behind it takes away along its luff; judgement, bounded by the tunnel polar of a una rig. */
+const MAST_SHIELD = 0.2;
 /** The boom lies near the apparent wind, under the foot of its sail: this share of its length counts; judgement. */
 const BOOM_SHARE = 0.2;
 

@@ -747,7 +747,7 @@ export const boatFile = {
           kind: 'ratio',
           range: [0.1, 1.5],
           missing: {
-            rule: '1.1, a cylinder below its critical Reynolds number; behind a sail half of it counts (judgement)',
+            rule: '1.1, a cylinder below its critical Reynolds number; along a luff eight tenths of it count (judgement)',
           },
           describe: 'Drag coefficient of the mast section on its diameter, bare.',
         },

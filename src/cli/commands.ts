@@ -45,6 +45,21 @@ const courseArguments = (argv: Readonly<Record<string, unknown>>) => ({
 });
 const file = (v: unknown): string => (v === STANDARD ? '-' : String(v));
 
+/** How a delimited table is written. */
+const TABLE_OPTIONS: Readonly<Record<string, OptionNote>> = {
+  delimiter: { type: 'string', describe: 'comma, semicolon, tab, bar, blank, or one character' },
+  'decimal-mark': { type: 'string', describe: 'mark of decimals', choices: ['point', 'comma'] },
+  'wind-unit': { type: 'string', describe: 'unit of wind speeds', choices: ['kn', 'm/s', 'km/h'] },
+  'speed-unit': { type: 'string', describe: 'unit of boat speeds', choices: ['kn', 'm/s', 'km/h'] },
+  'angle-unit': { type: 'string', describe: 'unit of angles', choices: ['deg', 'rad'] },
+};
+const tableWords = (argv: Readonly<Record<string, unknown>>) => ({
+  delimiter: text(argv.delimiter),
+  decimalMark: text(argv['decimal-mark']),
+  windUnit: text(argv['wind-unit']),
+  speedUnit: text(argv['speed-unit']),
+  angleUnit: text(argv['angle-unit']),
+});
 const COURSE_OPTIONS: Readonly<Record<string, OptionNote>> = {
   course: {
     type: 'string',
@@ -100,12 +115,20 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
     describe: 'show every force and moment at one state',
     examples: [
       'polarwright explain boats/keelboat.yaml --tws 12 --twa 45',
+      'polarwright explain mine.yaml --tws 12 --twa 45 --heel 8 --crew-mass 83',
       'polarwright explain mine.yaml --tws 12 --twa 45 --json',
     ],
     positional: BOAT,
     options: {
       tws: { type: 'string', describe: 'true wind speed, kn', demandOption: true },
       twa: { type: 'string', describe: 'true wind angle from the course, deg', demandOption: true },
+      heel: { type: 'string', describe: 'hold her at this heel, deg (to windward negative)' },
+      crew: { type: 'string', describe: 'hold the crew at this share of fully out, -1 to 1' },
+      ease: { type: 'string', describe: 'give up this share of the heeling moment, 0 to 0.95' },
+      board: { type: 'string', describe: 'hold this share of the board down' },
+      sails: { type: 'string', describe: 'keep to the sail set of this name' },
+      'crew-mass': { type: 'string', describe: 'sail with a crew of this mass together, kg' },
+      out: { type: 'string', describe: 'folder to write a page with a sketch of the balance to' },
       json: JSON_OPTION,
     },
     run: async (argv) => {
@@ -114,6 +137,13 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
         boat: file(argv.boat),
         tws: String(argv.tws),
         twa: String(argv.twa),
+        heel: text(argv.heel),
+        crew: text(argv.crew),
+        ease: text(argv.ease),
+        board: text(argv.board),
+        sails: text(argv.sails),
+        crewMass: text(argv['crew-mass']),
+        out: text(argv.out),
         json: argv.json === true,
       });
     },
@@ -239,6 +269,20 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
       checkCommand({ boat: file(argv.boat), json: argv.json === true, plot: text(argv.plot) });
     },
   },
+  sails: {
+    usage: 'sails <boat>',
+    describe: 'show what each sail set gives over apparent wind angle, and how it is loaded',
+    examples: ['polarwright sails boats/keelboat.yaml', 'polarwright sails mine.yaml --out reports'],
+    positional: BOAT,
+    options: {
+      out: { type: 'string', describe: 'folder to write a page and a table (CSV) to' },
+      json: JSON_OPTION,
+    },
+    run: async (argv) => {
+      const { sailsCommand } = await import('./sails-command.js');
+      sailsCommand({ boat: file(argv.boat), json: argv.json === true, out: text(argv.out) });
+    },
+  },
   new: {
     usage: 'new [file]',
     describe: 'write a boat file to start from',
@@ -267,6 +311,156 @@ const COMMANDS: Readonly<Record<string, CommandNote>> = {
         file: file(argv.file),
         kind: argv.kind === 'keelboat' ? 'keelboat' : 'dinghy',
         force: argv.force === true,
+      });
+    },
+  },
+  targets: {
+    usage: 'targets <boat>',
+    describe: 'target speeds for the coach: table, CSV, and cards for printing',
+    examples: [
+      'polarwright targets boats/keelboat.yaml',
+      'polarwright targets mine.yaml --tws 6:18:2 --reach 60,90,120 --paper A6',
+      'polarwright targets mine.yaml --unit m/s --sea-percent 96 --crew-percent 95 --label "first season"',
+    ],
+    positional: BOAT,
+    options: {
+      tws: { type: 'string', describe: 'true wind speeds, in the unit: a list 4,6,8 or a range 4:20:2' },
+      reach: { type: 'string', describe: 'true wind angles for reaching, deg: likewise' },
+      unit: { type: 'string', describe: 'unit of speeds', choices: ['kn', 'm/s'], default: 'kn' },
+      'sea-percent': { type: 'string', describe: 'what the sea leaves of the predicted speed, %' },
+      'crew-percent': { type: 'string', describe: 'what the crew get of the predicted speed, %' },
+      label: { type: 'string', describe: 'a line of your own on every card' },
+      paper: { type: 'string', describe: 'paper of the cards', choices: ['A5', 'A6'], default: 'A5' },
+      percents: { type: 'boolean', describe: 'print the helper tables, percent of target', default: false },
+      'boat-speed': { type: 'string', describe: 'print a boat speed in percent of every target' },
+      decimals: { type: 'string', describe: 'decimals of speeds, 0 to 6 (2)' },
+      out: { type: 'string', describe: 'folder to write to', default: 'reports' },
+      json: { ...JSON_OPTION, describe: 'print the targets as JSON, and write no files' },
+    },
+    run: async (argv) => {
+      const { targetsCommand } = await import('./targets-command.js');
+      targetsCommand({
+        boat: file(argv.boat),
+        tws: text(argv.tws),
+        reach: text(argv.reach),
+        unit: argv.unit === 'm/s' ? 'm/s' : 'kn',
+        seaPercent: text(argv['sea-percent']),
+        crewPercent: text(argv['crew-percent']),
+        label: text(argv.label),
+        paper: argv.paper === 'A6' ? 'A6' : 'A5',
+        decimals: text(argv.decimals),
+        percents: argv.percents === true,
+        boatSpeed: text(argv['boat-speed']),
+        out: String(argv.out),
+        json: argv.json === true,
+      });
+    },
+  },
+  export: {
+    usage: 'export <boat>',
+    describe: 'the complete speed table a router needs, as delimited text or Signal K',
+    examples: [
+      'polarwright export boats/keelboat.yaml',
+      'polarwright export mine.yaml --shape signal-k --cap 25 --percent 95',
+      'polarwright export mine.yaml --shape angles-across-tab --optimum --percent-by-wind 12:100,25:85',
+    ],
+    positional: BOAT,
+    options: {
+      shape: {
+        type: 'string',
+        describe: 'shape of the table',
+        choices: [
+          'angles-down',
+          'angles-down-tab',
+          'angles-down-semicolon',
+          'angles-across',
+          'angles-across-tab',
+          'list',
+          'signal-k',
+        ],
+        default: 'angles-down',
+      },
+      tws: { type: 'string', describe: 'true wind speeds to compute, in the wind unit: list or range' },
+      twa: { type: 'string', describe: 'true wind angles, deg: list or range; 0 and 180 are added' },
+      optimum: { type: 'boolean', describe: 'add the angles of best VMG of every wind', default: false },
+      cap: { type: 'string', describe: 'count no more wind than this' },
+      top: { type: 'string', describe: 'wind speed of a last row above the computed ones' },
+      above: {
+        type: 'string',
+        describe: 'up to there: hold the speeds, or let them fade to zero',
+        choices: ['hold', 'fade'],
+        default: 'hold',
+      },
+      'no-go': {
+        type: 'string',
+        describe: 'speeds in the no-go zone: zero, or fading to zero at 0 deg',
+        choices: ['zero', 'fade'],
+        default: 'zero',
+      },
+      percent: { type: 'string', describe: 'what is left of the predicted speed, %' },
+      'percent-by-wind': { type: 'string', describe: 'likewise by wind speed: 10:100,20:90' },
+      ...TABLE_OPTIONS,
+      header: { type: 'string', describe: 'text of the corner cell ("none": empty); for a list a,b,c' },
+      'line-ends': { type: 'string', describe: 'line ends', choices: ['crlf', 'lf'] },
+      decimals: { type: 'string', describe: 'decimals of boat speeds, 0 to 6 (2)' },
+      out: { type: 'string', describe: 'folder to write to', default: 'reports' },
+      print: { type: 'boolean', describe: 'print the table alone, and write no file', default: false },
+    },
+    run: async (argv) => {
+      const { exportCommand } = await import('./export-command.js');
+      exportCommand({
+        boat: file(argv.boat),
+        shape: String(argv.shape),
+        tws: text(argv.tws),
+        twa: text(argv.twa),
+        optimum: argv.optimum === true,
+        cap: text(argv.cap),
+        top: text(argv.top),
+        above: argv.above === 'fade' ? 'fade' : 'hold',
+        noGo: argv['no-go'] === 'fade' ? 'fade' : 'zero',
+        percent: text(argv.percent),
+        percentByWind: text(argv['percent-by-wind']),
+        ...tableWords(argv),
+        header: text(argv.header),
+        lineEnds: argv['line-ends'] === undefined ? undefined : argv['line-ends'] === 'lf' ? 'lf' : 'crlf',
+        decimals: text(argv.decimals),
+        out: String(argv.out),
+        print: argv.print === true,
+      });
+    },
+  },
+  table: {
+    usage: 'table <table>',
+    describe: 'read a speed table from elsewhere, plot it, compare it with a boat',
+    examples: [
+      'polarwright table reports/keelboat-routing.csv',
+      'polarwright table theirs.txt --boat boats/keelboat.yaml --wind-height "10 m"',
+      'polarwright table theirs.txt --layout angles-across --delimiter tab --wind-unit m/s',
+    ],
+    positional: {
+      name: 'table',
+      describe: 'table of boat speeds: delimited text or Signal K; "-" reads standard input',
+    },
+    options: {
+      boat: { type: 'string', describe: 'boat file whose prediction the table is compared with' },
+      'wind-height': { type: 'string', describe: "height the table's wind is quoted at, such as 10 m" },
+      layout: {
+        type: 'string',
+        describe: 'where the angles stand, if not guessed well',
+        choices: ['angles-down', 'angles-across', 'list'],
+      },
+      ...TABLE_OPTIONS,
+      out: { type: 'string', describe: 'folder to write to', default: 'reports' },
+    },
+    run: async (argv) => {
+      const { tableCommand } = await import('./table-command.js');
+      tableCommand({
+        table: file(argv.table),
+        boat: argv.boat === undefined ? undefined : file(argv.boat),
+        windHeight: text(argv['wind-height']),
+        layout: text(argv.layout),
+        ...tableWords(argv),
+        out: String(argv.out),
       });
     },
   },
@@ -331,7 +525,10 @@ async function lookOver(argv: readonly string[]): Promise<Words> {
     if (files.length > 1 && command.rest === undefined)
       throw new UsageError(`${name} takes one ${positional.name} only, not also "${files[1]}"`, ownHelp);
     if (files.length === 0 && positional.default === undefined)
-      throw new UsageError(`${name}: name a boat file, or "-" for standard input`, ownHelp);
+      throw new UsageError(
+        `${name}: name a ${positional.name === 'boat' ? 'boat file' : positional.name}, or "-" for standard input`,
+        ownHelp,
+      );
     for (const [option, note] of Object.entries(command.options)) {
       if (note.demandOption && !front.some((w) => w === `--${option}` || w.startsWith(`--${option}=`)))
         throw new UsageError(`${name}: --${option} is missing (${note.describe})`, ownHelp);

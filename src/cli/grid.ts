@@ -30,6 +30,42 @@ export const WIND_ANGLES: Allowed = {
   others: { deg: 1, rad: 180 / Math.PI },
 };
 
+/** Wind speeds that make sense to ask for, bare numbers in a unit of choice. */
+export function windSpeedsIn(unit: 'kn' | 'm/s' | 'km/h', option = '--tws'): Allowed {
+  const { others, least, most } = WIND_SPEEDS;
+  const per = others[unit]!;
+  const round = (v: number): number => Number((v / per).toFixed(1));
+  return {
+    option,
+    unit,
+    least: round(least),
+    most: round(most),
+    others: Object.fromEntries(Object.entries(others).map(([u, factor]) => [u, factor / per])),
+  };
+}
+
+/** Decimals of speeds. @throws UsageError */
+export function readDecimals(text: string | undefined): number | undefined {
+  if (text === undefined) return undefined;
+  if (!/^[0-6]$/.test(text.trim()))
+    throw new UsageError(`--decimals: "${text}" is not a whole number from 0 to 6`);
+  return Number(text);
+}
+
+/** Least percent of a predicted speed that is taken for one (judgement: below, it is the part taken off). */
+const LEAST_PERCENT = 30;
+
+/** A percent of the predicted speed, as a share. @throws UsageError naming the option and what is allowed */
+export function readPercent(text: string, option: string): number {
+  const t = text.trim().replace(/\s*%$/, '');
+  const value = /^(\d+\.?\d*|\.\d+)$/.test(t) ? Number(t) : Number.NaN;
+  if (!(value >= LEAST_PERCENT && value <= 100))
+    throw new UsageError(
+      `${option}: "${text}" is not a percent from ${LEAST_PERCENT} to 100; it is what is left of the predicted speed, such as 95`,
+    );
+  return value / 100;
+}
+
 /** Splits a unit off the end of a list: "3,5,7 m/s" gives "3,5,7" and its factor. */
 function withoutUnit(text: string, allowed: Allowed): { values: string; factor: number } {
   const match = /^(.*?[\d.])\s*([a-z/]+)\s*$/i.exec(text);
@@ -106,3 +142,13 @@ export function readOne(text: string, allowed: Allowed): number {
   const { values, factor } = withoutUnit(text, allowed);
   return inRange(plainNumber(values, allowed) * factor, allowed);
 }
+
+/** Shares, and the mass of a whole crew. */
+export const SHARES: Allowed = { option: '', unit: '', least: 0, most: 1, others: {} };
+export const CREW_MASS: Allowed = {
+  option: '--crew-mass',
+  unit: 'kg',
+  least: 25,
+  most: 4000,
+  others: { kg: 1, lb: 0.45359237 },
+};

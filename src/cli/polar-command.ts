@@ -2,6 +2,7 @@ import { join } from 'node:path';
 import { predictPolar } from '../polar/index.js';
 import {
   cautionText,
+  crossoverCsv,
   fileStem,
   polarCsv,
   polarJson,
@@ -16,8 +17,7 @@ import {
 } from '../publish/index.js';
 import { fromKnots, radians } from '../units/index.js';
 import { loadBoat, reportName } from './boat-input.js';
-import { UsageError } from './errors.js';
-import { readList, WIND_ANGLES, WIND_SPEEDS } from './grid.js';
+import { readDecimals, readList, WIND_ANGLES, WIND_SPEEDS } from './grid.js';
 import { print, printRaw } from './output.js';
 
 export interface PolarArguments {
@@ -28,13 +28,6 @@ export interface PolarArguments {
   readonly json: boolean;
   readonly quiet: boolean;
   readonly decimals: string | undefined;
-}
-
-function readDecimals(text: string | undefined): number | undefined {
-  if (text === undefined) return undefined;
-  if (!/^[0-6]$/.test(text.trim()))
-    throw new UsageError(`--decimals: "${text}" is not a whole number from 0 to 6`);
-  return Number(text);
 }
 
 /** Predicts the polar, writes its files, prints the targets. */
@@ -52,12 +45,21 @@ export function polarCommand(a: PolarArguments): void {
   const stem = fileStem(reportName(a.boat, boat));
   const files = writeFiles(a.out, [
     { name: `${stem}-polar.csv`, content: polarCsv(report, decimals) },
+    ...(polar.sets.length > 1
+      ? [{ name: `${stem}-crossover.csv`, content: crossoverCsv(polar, decimals) }]
+      : []),
     { name: `${stem}-resistance.csv`, content: resistanceCsv(report.resistance, decimals) },
     { name: `${stem}-results.json`, content: polarJson(report) },
     { name: `${stem}-page.html`, content: polarPage(report, decimals) },
   ]);
   if (a.quiet) return;
-  const what = ['polar table', 'resistance', 'results', 'page'];
+  const what = [
+    'polar table',
+    ...(polar.sets.length > 1 ? ['crossover'] : []),
+    'resistance',
+    'results',
+    'page',
+  ];
   const places = files.map((f, i) => `${what[i]!.padEnd(11)}  ${join(f)}`);
   const { warnings } = report.boat;
   const beyond = warnings.map((w) => wrapped(`- ${warningText(w)}`, TEXT_WIDTH, '  '));

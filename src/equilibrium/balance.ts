@@ -3,7 +3,7 @@ import { FOIL } from '../foils/index.js';
 import { HULL } from '../hull/index.js';
 import { AERO } from '../sails/index.js';
 import { createSetSolvers, stateVector } from './boat-solver.js';
-import { type ForceBalance, type ForceRow, RES, type SailingState, X } from './types.js';
+import { type ForceBalance, type ForceRow, type LinesOfAction, RES, type SailingState, X } from './types.js';
 
 const DEGREE = Math.PI / 180;
 
@@ -116,6 +116,11 @@ export function forceBalance(boat: Boat, state: SailingState): ForceBalance {
   fact('rudder lift used', 100 * foils[FOIL.rudderStall]!, '% of its limit');
   for (const l of set.sailSet.loading(flow, heel, model.price(x[X.depower]!))) {
     fact(`${l.sail}: centre of effort above the water`, l.centreHeight, 'm');
+    let atLimit = 0;
+    for (let i = 0; i < l.cl.length; i++) if (l.cl[i]! > 0.999 * l.clLimit[i]!) atLimit++;
+    fact(`${l.sail}: sections at their lift limit`, (100 * atLimit) / l.cl.length, '% of nodes');
+    const last = l.inflow.length - 1;
+    fact(`${l.sail}: twist of the wind, foot to head`, (l.inflow[last]! - l.inflow[0]!) / DEGREE, 'deg');
   }
   fact('drag angle in air', airDragAngle(state, rows) / DEGREE, 'deg');
   fact('drag angle in water', waterDragAngle(rows) / DEGREE, 'deg');
@@ -136,7 +141,47 @@ export function forceBalance(boat: Boat, state: SailingState): ForceBalance {
   );
   if (gap > 1e-9 * weight)
     throw new Error(`the force table misses ${gap.toExponential(2)} N of the model's sum`);
-  return { state, rows, sum, facts };
+  return { state, rows, sum, facts, lines: linesOfAction(boat, state, rows, air, foils) };
+}
+
+/** Resultants of air and water, each with a point of its line of action. */
+function linesOfAction(
+  boat: Boat,
+  state: SailingState,
+  rows: readonly ForceRow[],
+  air: Float64Array,
+  foils: Float64Array,
+): LinesOfAction {
+  const up = total(rows, 'air');
+  const down = total(rows, 'water');
+  const { spec } = boat;
+  const [sin, cos] = [Math.sin(state.heel), Math.cos(state.heel)];
+  const side = Math.abs(air[AERO.side]!) > 1e-9 ? air[AERO.side]! : 1e-9;
+  const lift = Math.abs(foils[FOIL.lift]!) > 1e-9 ? foils[FOIL.lift]! : 1e-9;
+  const z = air[AERO.heelMoment]! / side;
+  const depth = foils[FOIL.heelMoment]! / lift;
+  const rudder = rows.find((r) => r.name === 'rudder, lift');
+  const yaw = rows.filter((r) => r.group !== 'weight').reduce((s, r) => s + r.yaw, 0) - (rudder?.yaw ?? 0);
+  return {
+    air: { ...up, z, x: air[AERO.sideX]! / side, planOffset: z * sin },
+    water: {
+      ...down,
+      depth,
+      x: foils[FOIL.yawMoment]! / (lift * cos),
+      planOffset: -depth * sin,
+    },
+    lead: Math.hypot(up.forward, up.leeward) > 0 ? yaw / Math.hypot(up.forward, up.leeward) : 0,
+    crewWeight: spec.crew.mass * spec.gravity,
+    crewHeight: spec.crew.z,
+    boatWeight: (boat.mass - spec.crew.mass) * spec.gravity,
+    massHeight: boat.centre.z,
+    length: spec.hull.loa,
+    beam: spec.hull.dimensions.beamMax,
+    freeboard: spec.hull.dimensions.freeboard,
+    canoeDraft: spec.hull.dimensions.canoeDraft,
+    draft: spec.keel.span * state.boardDown - spec.keel.z,
+    mastTop: spec.rig.mastTop,
+  };
 }
 
 function total(rows: readonly ForceRow[], group: ForceRow['group']): { forward: number; leeward: number } {

@@ -31,6 +31,18 @@ export interface BoatModel extends ForceModel {
   price(depower: number): number;
 }
 
+/** Controls held where they are put instead of being chosen. */
+export interface HeldControls {
+  /** Heel [rad], to leeward positive. */
+  readonly heel?: number | undefined;
+  /** Crew's arm as a share of fully out, -1 to 1. */
+  readonly crewShare?: number | undefined;
+  /** Share of the board lowered. */
+  readonly boardDown?: number | undefined;
+  /** The solver's own depower value; reports speak of `ease`. */
+  readonly depower?: number | undefined;
+}
+
 /** Lowest heel [rad] offered to the solver: a little to windward. Judgement. */
 const HEEL_TO_WINDWARD = (-5 * Math.PI) / 180;
 /**
@@ -45,11 +57,14 @@ const HEEL_OFF_WIND = {
 /** Largest depower value: the price is then 199 over the sails' height, which leaves next to nothing. */
 const DEPOWER_MAX = 0.995;
 
+/** What heel, leeway and trim could add to upright drive or take from upright resistance, with room to spare (judgement). */
+const BOUND_MARGIN = { drive: 1.06, resistance: 0.9 } as const;
+
 /**
  * Forces and moments of a boat under one sail set. Body and course axes as in methods: heading is turned to
  * windward of the course by the leeway; water drag acts along the course, foil lift across it.
  */
-export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
+export function createBoatModel(boat: Boat, sailSet: SailSet, held: HeldControls = {}): BoatModel {
   const { spec, hull, foils, mass } = boat;
   const g = spec.gravity;
   const weight = mass * g;
@@ -87,10 +102,19 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
   limit(X.arm, spec.crew.armLee, spec.crew.armOut);
 
   limit(X.hoist, spec.boardRange[0], spec.boardRange[1]);
-  const hoists = spec.boardRange[0] < spec.boardRange[1];
+  const hoists = spec.boardRange[0] < spec.boardRange[1] && held.boardDown === undefined;
+
+  if (held.heel !== undefined) limit(X.heel, held.heel, held.heel);
+  if (held.boardDown !== undefined) limit(X.hoist, held.boardDown, held.boardDown);
+  if (held.depower !== undefined) limit(X.depower, held.depower, held.depower);
+  if (held.crewShare !== undefined) {
+    const arm = held.crewShare * (held.crewShare >= 0 ? spec.crew.armOut : -spec.crew.armLee);
+    limit(X.arm, arm, arm);
+  }
 
   const heelLimit = upper[X.heel]!;
   const prepare = (_tws: number, twa: number): void => {
+    if (held.heel !== undefined) return;
     const t = Math.min(
       1,
       Math.max(0, (twa - HEEL_OFF_WIND.start) / (HEEL_OFF_WIND.end - HEEL_OFF_WIND.start)),
@@ -245,6 +269,26 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
     return 4;
   };
 
+  const bare = new Float64Array(AERO.count);
+  const bareHull = new Float64Array(HULL.count);
+  const bareFoils = new Float64Array(FOIL.count);
+  const boundsAt = (tws: number, twa: number, speed: number): { drive: number; resistance: number } => {
+    // Upright at full power drive is largest. Leeway turns the hull, not the sails, but the boom's limit goes with it.
+    flow.tws = tws;
+    flow.twa = twa;
+    flow.speed = speed;
+    flow.leeway = 0;
+    sailSet.evaluateInto(flow, 0, 0, bare);
+    const hullDrag = hull.resistanceInto(speed, 0, bareHull);
+    foils.evaluateInto(speed, 0, 0, 0, spec.boardRange[0], bareFoils);
+    const foilDrag = bareFoils[FOIL.keelProfile]! + bareFoils[FOIL.rudderProfile]!;
+    setWaves(tws, twa);
+    return {
+      drive: (BOUND_MARGIN.drive * Math.max(0, bare[AERO.drive]!) + Math.min(0, bare[AERO.drive]!)) / weight,
+      resistance: (BOUND_MARGIN.resistance * (hullDrag + foilDrag) + forces.waves) / weight,
+    };
+  };
+
   const model: BoatModel = {
     boat,
     sailSet,
@@ -257,6 +301,7 @@ export function createBoatModel(boat: Boat, sailSet: SailSet): BoatModel {
     sideConditionsInto,
     sideConditionNames: ['keel lift', 'rudder lift'],
     jacobianInto,
+    boundsAt,
     price,
   };
   return model;

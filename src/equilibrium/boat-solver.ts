@@ -1,7 +1,7 @@
 import type { Boat } from '../boat/index.js';
 import type { SailSet } from '../sails/index.js';
 import { AERO } from '../sails/index.js';
-import { type BoatModel, createBoatModel } from './boat-model.js';
+import { type BoatModel, createBoatModel, type HeldControls } from './boat-model.js';
 import { createSolver, type Outcome, type Solution, type Solver } from './solve.js';
 import { RES, type Regime, type SailingResult, type SailingState, X } from './types.js';
 
@@ -13,9 +13,9 @@ export interface SetSolver {
 }
 
 /** One solver per sail set. Each keeps a workspace: do not share one between workers. */
-export function createSetSolvers(boat: Boat): readonly SetSolver[] {
+export function createSetSolvers(boat: Boat, held: HeldControls = {}): readonly SetSolver[] {
   return boat.sailSets.map((sailSet) => {
-    const model = createBoatModel(boat, sailSet);
+    const model = createBoatModel(boat, sailSet, held);
     return { sailSet, model, solver: createSolver(model) };
   });
 }
@@ -28,8 +28,9 @@ function regimeOf(model: BoatModel, x: Float64Array, ease: number): Regime {
   if (model.sailSet.spec.sails.some((s) => (s.reef ?? 0) > 0)) return 'reefed';
   if (ease > EASE_SHOWN) return 'easing';
   if (x[X.heel]! > upper[X.heel]! - 1e-6) return 'heel limited';
-  if (x[X.arm]! > upper[X.arm]! * (1 - 1e-6)) return 'crew full out';
-  if (Math.abs(x[X.arm]!) < 0.02 * upper[X.arm]!) return 'crew inboard';
+  const { armOut } = model.boat.spec.crew;
+  if (x[X.arm]! > armOut * (1 - 1e-6)) return 'crew full out';
+  if (Math.abs(x[X.arm]!) < 0.02 * armOut) return 'crew inboard';
   return 'crew part out';
 }
 
@@ -59,7 +60,7 @@ export function describeState(set: SetSolver, tws: number, twa: number, s: Solut
     ease = full > 0 ? Math.max(0, 1 - moment / full) : 0;
   }
   const arm = x[X.arm]!;
-  const { lower, upper } = model.bounds;
+  const { armOut, armLee } = model.boat.spec.crew;
   const notes: string[] = [];
   if (!s.proven) notes.push('balances, but not proven to be the fastest state: the search ended at an edge');
   return {
@@ -77,7 +78,7 @@ export function describeState(set: SetSolver, tws: number, twa: number, s: Solut
     ease,
     depower: x[X.depower]!,
     crewArm: arm,
-    crewShare: arm >= 0 ? arm / Math.max(1e-9, upper[X.arm]!) : -arm / Math.min(-1e-9, lower[X.arm]!),
+    crewShare: arm >= 0 ? arm / Math.max(1e-9, armOut) : -arm / Math.min(-1e-9, armLee),
     boardDown: x[X.hoist]!,
     sailSet: sailSet.name,
     regime: regimeOf(model, x, ease),
@@ -112,20 +113,83 @@ export function stateVector(s: SailingState): Float64Array {
   return x;
 }
 
+/** What is held while the rest is chosen for most speed; see `solveState`. */
+export interface Held extends Omit<HeldControls, 'depower'> {
+  /** Share of the full heeling moment given up, 0 to below 1. */
+  readonly ease?: number | undefined;
+  /** Name of the sail set. */
+  readonly sailSet?: string | undefined;
+}
+
+/** The depower value that gives up a share of the heeling moment: ease grows with it, so a bracket closes on it. */
+function solveEased(boat: Boat, set: SailSet, tws: number, twa: number, held: Held): SailingResult {
+  const ease = held.ease ?? 0;
+  const at = (depower: number): { set: SetSolver; result: SailingResult } => {
+    const model = createBoatModel(boat, set, { ...held, depower });
+    const solver = { sailSet: set, model, solver: createSolver(model) };
+    return { set: solver, result: describeOutcome(solver, tws, twa, solveAlone(solver.solver, tws, twa)) };
+  };
+  let low = 0;
+  let high = 0.98;
+  let best = at(0).result;
+  if (best.status !== 'balanced' || ease <= 0) return best;
+  for (let i = 0; i < 40; i++) {
+    const mid = 0.5 * (low + high);
+    const r = at(mid).result;
+    if (r.status !== 'balanced' || r.ease > ease) high = mid;
+    else low = mid;
+    if (r.status === 'balanced') best = r;
+    if (r.status === 'balanced' && Math.abs(r.ease - ease) < 1e-6) break;
+  }
+  if (best.status === 'balanced' && Math.abs(best.ease - ease) > 1e-3) {
+    return {
+      status: 'unbalanced',
+      tws,
+      twa,
+      why: 'not converged',
+      reason: `no state eased by ${ease} balances; the nearest gives up ${best.ease.toFixed(3)}`,
+      evaluations: best.evaluations,
+    };
+  }
+  return best;
+}
+
 /**
  * The fastest balanced state at one true wind speed [m/s] and angle [rad, from the course], over all sail sets.
  * Solved from nothing: no neighbouring state is needed.
+ * @param held what is not chosen but held: heel, crew, board, ease, sail set
+ * @throws RangeError when something is held outside its range
  */
-export function solveState(boat: Boat, wind: { readonly tws: number; readonly twa: number }): SailingResult {
+export function solveState(
+  boat: Boat,
+  wind: { readonly tws: number; readonly twa: number },
+  held: Held = {},
+): SailingResult {
   const twa = Math.abs(wind.twa);
+  const range = boat.spec.boardRange;
+  const checked = (name: string, value: number | undefined, low: number, high: number): void => {
+    if (value !== undefined && !(value >= low && value <= high))
+      throw new RangeError(`${name} ${value} is outside ${low} to ${high}`);
+  };
+  checked('heel', held.heel, -0.6, 1);
+  checked('crew share', held.crewShare, -1, 1);
+  checked('board', held.boardDown, range[0], range[1]);
+  checked('ease', held.ease, 0, 0.95);
+  const sets = boat.sailSets.filter((s) => held.sailSet === undefined || s.name === held.sailSet);
+  if (sets.length === 0) throw new RangeError(`the boat has no sail set "${held.sailSet ?? ''}"`);
   let best: SailingResult | undefined;
-  for (const set of createSetSolvers(boat)) {
-    const r = describeOutcome(set, wind.tws, twa, solveAlone(set.solver, wind.tws, twa));
+  for (const sailSet of sets) {
+    let r: SailingResult;
+    if (held.ease !== undefined) r = solveEased(boat, sailSet, wind.tws, twa, held);
+    else {
+      const model = createBoatModel(boat, sailSet, held);
+      const set = { sailSet, model, solver: createSolver(model) };
+      r = describeOutcome(set, wind.tws, twa, solveAlone(set.solver, wind.tws, twa));
+    }
     if (best === undefined) best = r;
     else if (r.status === 'balanced' && (best.status !== 'balanced' || r.speed > best.speed)) best = r;
   }
-  if (best === undefined) throw new RangeError('the boat has no sail set');
-  return best;
+  return best!;
 }
 
 /**

@@ -4,6 +4,7 @@ export {
   createSetSolvers,
   describeOutcome,
   describeState,
+  type Held,
   otherSide,
   type SetSolver,
   solveAlone,
@@ -11,13 +12,21 @@ export {
   stateVector,
 } from './boat-solver.js';
 export { type Attempt, createOptimiser, finiteDifferenceJacobian, type Optimiser } from './optimise.js';
-export { createSolver, type NoSolution, type Outcome, type Solution, type Solver } from './solve.js';
+export {
+  createSolver,
+  type NoSolution,
+  type Outcome,
+  type Solution,
+  type Solver,
+  type Start,
+} from './solve.js';
 export { createSurvey, type Survey, type SurveyPoint } from './survey.js';
 export {
   type Bounds,
   type ForceBalance,
   type ForceModel,
   type ForceRow,
+  type LinesOfAction,
   type NoState,
   RES,
   type Regime,

@@ -1,20 +1,19 @@
-import { luFactor, luSolve, luSolveTransposed } from '../numerics/index.js';
-import { createPlaneQp, solvePlaneQp } from './plane-qp.js';
+import { createSmallQp, luFactor, luSolve, luSolveTransposed } from '../numerics/index.js';
 import { type ForceModel, RES, X } from './types.js';
 
 /**
  * The fastest balanced state at one wind speed and angle, by sequential quadratic programming.
  *
- * Unknowns x = (speed, leeway, heel, rudder, depower, arm, hoist); four balances c(x) = 0; heel and depower are the
- * free controls p, four others, s, follow from the balances. How much of a board is down, where that can be chosen,
- * moves beside them by Newton steps of its own on the reduced gradient. Each step linearises c,
+ * Unknowns x = (speed, leeway, heel, rudder, depower, arm, hoist); four balances c(x) = 0; heel, depower and how much of
+ * a board is down are the free controls p, the other four, s, follow from the balances. Each step linearises c,
  *
  *   ds = -Js^-1 c - Js^-1 Jp dp,
  *
- * so that speed becomes a function of the two controls with the gradient (-Js^-1 Jp)[speed], and the limits on
- * arm, rudder and foil loads become lines in the plane of the controls. The step is the answer of that small
- * quadratic programme (plane-qp.ts) with a damped BFGS matrix, in a trust region, judged by the exact penalty
- * -speed + 2 |adjoint . c| + penalty * violation (Nocedal & Wright, Numerical Optimization, 2006, chapter 18).
+ * so that speed becomes a function of the controls with the gradient (-Js^-1 Jp)[speed], and the limits on arm, rudder
+ * and foil loads become planes in the space of the controls. The step is the answer of that small quadratic programme
+ * (dual active set, numerics/small-qp.ts) with a damped BFGS matrix, in a trust region, judged by the exact penalty
+ * -speed + 2 |adjoint . c| + penalty * violation (Nocedal & Wright, Numerical Optimization, 2006, chapter 18). Where the
+ * limits leave no room, one more variable lets all of them give way together at a price.
  */
 
 export interface Attempt {
@@ -32,21 +31,40 @@ export interface Attempt {
   readonly iterations: number;
   /** d speed / d twa along the optimum (envelope theorem), m/s per rad. */
   readonly speedSlope: number;
+  /** Curvature of speed over the controls at the end, by rows: a good start for a neighbour. */
+  readonly curvature: Float64Array;
+}
+
+export interface RunOptions {
+  /** Lower than usual where a start is a guess among many. */
+  readonly mostIterations?: number | undefined;
+  /** Curvature of a neighbouring solution. */
+  readonly curvature?: Float64Array | undefined;
+  /**
+   * Once steps are small, finish on the derivatives at hand: the speed is right to about one part in a million, the
+   * slope to one in a thousand. For states that only fill a grid.
+   */
+  readonly quick?: boolean | undefined;
 }
 
 export interface Optimiser {
   readonly model: ForceModel;
-  /** @param mostIterations lower than usual where a start is a guess among many */
-  run(tws: number, twa: number, start: Float64Array, mostIterations?: number): Attempt;
+  run(tws: number, twa: number, start: Float64Array, options?: RunOptions): Attempt;
 }
 
 const BASIC = [X.speed, X.leeway, X.rudder, X.arm] as const;
-/** Ties are broken towards full power and upright by this share of speed: far below any shown digit. */
+const CONTROLS = [X.heel, X.depower, X.hoist] as const;
+/** First guess of the curvature of speed over each control, as a share of speed; longest step; and its small size. */
+const CURVATURE = [3, 1, 0.3] as const;
+const LONGEST = [0.25, 0.5, 0.4] as const;
+const SMALL_STEP = 3e-3;
+/** Most curvature a run may build up, and take over from a neighbour, over the first guess. */
+const MOST_CURVATURE = 50;
+const MOST_INHERITED = 5;
+/** Ties are broken towards full power, upright and the board down by this share of speed: far below any shown digit. */
 const TIE = 1e-6;
 const RESIDUAL_TOLERANCE = 1e-10;
 const MAX_ITERATIONS = 40;
-/** First guess of the curvature of speed over the share of a board that is down, as a share of speed. */
-const HOIST_CURVATURE = 0.3;
 /** Gain in speed, as a share, below which a corner of the model may end the search. */
 const CORNER_GAIN = 2e-5;
 
@@ -81,8 +99,11 @@ export function finiteDifferenceJacobian(
 export function createOptimiser(model: ForceModel): Optimiser {
   const { lower, upper } = model.bounds;
   const nSide = model.sideConditions;
-  const nCons = 8 + 4 + nSide;
-  const qp = createPlaneQp(nCons);
+  const hoists = upper[X.hoist]! > lower[X.hoist]!;
+  const nc = hoists ? 3 : 2;
+  const nReal = 2 * nc + 4 + nSide;
+  const nCons = nReal + 2 * nc + 1;
+  const qp = createSmallQp(nc + 1, nCons);
   const c = new Float64Array(RES.count);
   const cNew = new Float64Array(RES.count);
   const g = new Float64Array(Math.max(1, nSide));
@@ -92,14 +113,22 @@ export function createOptimiser(model: ForceModel): Optimiser {
   const lu = new Float64Array(16);
   const pivots = new Int32Array(4);
   const ds0 = new Float64Array(4);
-  const ds1 = new Float64Array(4); // with the board's step
-  const th = new Float64Array(4); // d s / d heel
-  const td = new Float64Array(4); // d s / d depower
-  const tb = new Float64Array(4); // d s / d hoist
-  const hoists = upper[X.hoist]! > lower[X.hoist]!;
+  const tangents = CONTROLS.map(() => new Float64Array(4)); // d s / d control
   const adjoint = new Float64Array(4);
   const xNew = new Float64Array(X.count);
-  const oldNormals = new Float64Array(2 * nCons);
+  const gradient = new Float64Array(3);
+  const gradientOld = new Float64Array(3);
+  const step = new Float64Array(3);
+  const dp = new Float64Array(3);
+  const ds = new Float64Array(4);
+  const y = new Float64Array(3);
+  const bs = new Float64Array(3);
+  const curvature = new Float64Array(9);
+  // Limits of the linearised problem, nc numbers a normal.
+  const normals = new Float64Array(nc * nCons);
+  const limits = new Float64Array(nCons);
+  const oldNormals = new Float64Array(nc * nCons);
+  const multipliers = new Float64Array(nCons);
   const oldMultipliers = new Float64Array(nCons);
   const col = new Float64Array(4);
   const work = {
@@ -111,14 +140,67 @@ export function createOptimiser(model: ForceModel): Optimiser {
   const violationAt = (x: Float64Array, side: Float64Array): number => {
     let v = 0;
     for (let j = 0; j < X.count; j++) {
-      const scale = j === X.arm ? upper[X.arm]! - lower[X.arm]! : j === X.speed ? model.speedScale : 1;
+      const scale = j === X.arm ? armScale() : j === X.speed ? model.speedScale : 1;
       v += Math.max(0, x[j]! - upper[j]!, lower[j]! - x[j]!) / scale;
     }
     for (let i = 0; i < nSide; i++) v += Math.max(0, side[i]!);
     return v;
   };
+  /** Length of the crew's reach; a held arm still needs a scale. */
+  const armScale = (): number => Math.max(1e-3, upper[X.arm]! - lower[X.arm]!);
 
-  const run = (tws: number, twa: number, start: Float64Array, mostIterations = MAX_ITERATIONS): Attempt => {
+  /**
+   * Keeps the curvature within so many times its first guess. At a kink BFGS sees a wall in a corner; a matrix that grew
+   * without bound would stop the search anywhere, and call it the end.
+   */
+  const capCurvature = (most: number): void => {
+    for (let i = 0; i < nc; i++) {
+      const top = most * CURVATURE[i]!;
+      const own = curvature[4 * i]!;
+      if (own <= top) continue;
+      const f = Math.sqrt(top / own);
+      for (let j = 0; j < nc; j++) {
+        curvature[3 * i + j]! *= f;
+        curvature[3 * j + i]! *= f;
+      }
+    }
+  };
+
+  /** The small programme for the first m limits, the first `soft` of which may give way when there is no room. */
+  const solveStep = (m: number, soft: number, rho: number): void => {
+    for (let i = 0; i < nc; i++) {
+      qp.g[i] = gradient[i]!;
+      for (let j = 0; j < nc; j++) qp.b[i * nc + j] = curvature[3 * i + j]!;
+    }
+    qp.normals.set(normals.subarray(0, nc * m));
+    qp.limits.set(limits.subarray(0, m));
+    if (qp.solve(nc, m)) {
+      for (let i = 0; i < nc; i++) dp[i] = qp.p[i]!;
+      multipliers.set(qp.multipliers.subarray(0, m));
+      return;
+    }
+    const n = nc + 1;
+    qp.b.fill(0);
+    for (let i = 0; i < nc; i++) {
+      qp.g[i] = gradient[i]!;
+      for (let j = 0; j < nc; j++) qp.b[i * n + j] = curvature[3 * i + j]!;
+    }
+    qp.b[n * n - 1] = 1e-3 * rho;
+    qp.g[nc] = -rho;
+    for (let k = 0; k < m; k++) {
+      for (let i = 0; i < nc; i++) qp.normals[k * n + i] = normals[k * nc + i]!;
+      qp.normals[k * n + nc] = k < soft ? -1 : 0;
+      qp.limits[k] = limits[k]!;
+    }
+    for (let i = 0; i < n; i++) qp.normals[m * n + i] = i === nc ? -1 : 0;
+    qp.limits[m] = 0;
+    if (!qp.solve(n, m + 1)) qp.p.fill(0);
+    for (let i = 0; i < nc; i++) dp[i] = qp.p[i]!;
+    multipliers.set(qp.multipliers.subarray(0, m));
+  };
+
+  const run = (tws: number, twa: number, start: Float64Array, options: RunOptions = {}): Attempt => {
+    const mostIterations = options.mostIterations ?? MAX_ITERATIONS;
     model.prepare?.(tws, twa);
     const x = new Float64Array(X.count);
     for (let j = 0; j < X.count; j++) {
@@ -130,26 +212,21 @@ export function createOptimiser(model: ForceModel): Optimiser {
     model.residualInto(tws, twa, x, c);
     if (nSide > 0) model.sideConditionsInto(g);
     let radius = 1;
-    let b11 = 3 * x[X.speed]!;
-    let b12 = 0;
-    let b22 = x[X.speed]!;
-    let gradOld1 = 0;
-    let gradOld2 = 0;
+    curvature.fill(0);
+    if (options.curvature === undefined) {
+      for (let i = 0; i < nc; i++) curvature[4 * i] = CURVATURE[i]! * x[X.speed]!;
+    } else {
+      curvature.set(options.curvature);
+      capCurvature(MOST_INHERITED * x[X.speed]!);
+    }
     let haveOld = false;
-    let stepHeel = 0;
-    let stepDepower = 0;
     let iterations = 0;
     let converged = false;
     let stable = false;
     let speedSlope = 0;
     let needJacobian = true;
-    // The board: curvature of speed over hoist, last step, and the gradient before it.
-    let b33 = HOIST_CURVATURE * x[X.speed]!;
-    let dHoist = 0;
-    let stepHoist = 0;
-    let gradHoist = 0;
-    let gradHoistOld = 0;
-    const armScale = upper[X.arm]! - lower[X.arm]!;
+    let chords = 0;
+    const reach = armScale();
 
     /** Newton on the balances alone, controls held, with the factors at hand; true when they are met. */
     const polish = (): boolean => {
@@ -168,144 +245,123 @@ export function createOptimiser(model: ForceModel): Optimiser {
     };
 
     for (; iterations < mostIterations; iterations++) {
+      const tie = TIE * x[X.speed]!;
       if (needJacobian) {
         evaluations += model.jacobianInto
           ? model.jacobianInto(tws, twa, x, jac, jacSide)
           : finiteDifferenceJacobian(model, tws, twa, x, c, g, jac, jacSide, work);
         for (let i = 0; i < 4; i++) for (let j = 0; j < 4; j++) lu[i * 4 + j] = jac[i * X.count + BASIC[j]!]!;
         if (!luFactor(4, lu, pivots)) break;
-        for (let i = 0; i < 4; i++) {
-          ds0[i] = -c[i]!;
-          th[i] = -jac[i * X.count + X.heel]!;
-          td[i] = -jac[i * X.count + X.depower]!;
-          tb[i] = hoists ? -jac[i * X.count + X.hoist]! : 0;
-          adjoint[i] = i === 0 ? 1 : 0;
+        for (let k = 0; k < nc; k++) {
+          const t = tangents[k]!;
+          for (let i = 0; i < 4; i++) t[i] = -jac[i * X.count + CONTROLS[k]!]!;
+          luSolve(4, lu, pivots, t);
         }
-        luSolve(4, lu, pivots, ds0);
-        luSolve(4, lu, pivots, th);
-        luSolve(4, lu, pivots, td);
-        if (hoists) luSolve(4, lu, pivots, tb);
+        for (let i = 0; i < 4; i++) adjoint[i] = i === 0 ? 1 : 0;
         luSolveTransposed(4, lu, pivots, adjoint); // d speed = -adjoint . dc
         stable = adjoint[RES.surge]! < 0;
+        for (let k = 0; k < nc; k++) {
+          const from = k === 2 ? x[X.hoist]! - upper[X.hoist]! : x[CONTROLS[k]!]!;
+          gradient[k] = tangents[k]![0]! - 2 * tie * from;
+        }
+        chords = 0;
       }
+      for (let i = 0; i < 4; i++) ds0[i] = -c[i]!;
+      luSolve(4, lu, pivots, ds0);
       const speed = x[X.speed]!;
-      const tie = TIE * speed;
-      const grad1 = th[0]! - 2 * tie * x[X.heel]!;
-      const grad2 = td[0]! - 2 * tie * x[X.depower]!;
 
-      let gainHoist = 0;
-      if (hoists) {
-        // What lowering the board gains, less what it costs at the limits that hold.
-        const mu = oldMultipliers;
-        let grad = tb[0]! + 2 * tie * (upper[X.hoist]! - x[X.hoist]!);
-        if (haveOld) {
-          grad -= ((mu[4]! - mu[5]!) * tb[3]!) / armScale + (mu[6]! - mu[7]!) * tb[2]!;
-          for (let k = 0; k < nSide; k++) {
-            if (mu[8 + k] === 0) continue;
-            let d = jacSide[k * X.count + X.hoist]!;
-            for (let i = 0; i < 4; i++) d += jacSide[k * X.count + BASIC[i]!]! * tb[i]!;
-            grad -= mu[8 + k]! * d;
-          }
-        }
-        if (needJacobian && Math.abs(stepHoist) > 1e-5) {
-          const curvature = (gradHoistOld - grad) / stepHoist;
-          b33 = Math.min(
-            20 * speed,
-            Math.max(0.5 * b33, curvature > 0 ? Math.min(curvature, 4 * b33) : 0, 0.02 * speed),
-          );
-        }
-        const most = 0.25 * radius;
-        dHoist = Math.min(most, Math.max(-most, grad / b33));
-        dHoist = Math.min(upper[X.hoist]! - x[X.hoist]!, Math.max(lower[X.hoist]! - x[X.hoist]!, dHoist));
-        gainHoist = grad * dHoist;
-        gradHoist = grad;
-      }
-
-      // Lines in the plane of (heel, depower) steps.
-      const { normals, limits } = qp;
+      // Limits as half spaces of control steps: first the real ones, then the trust region.
       let m = 0;
-      const line = (a1: number, a2: number, b: number): void => {
-        normals[2 * m] = a1;
-        normals[2 * m + 1] = a2;
-        limits[m] = b;
-        m++;
-      };
-      line(1, 0, upper[X.heel]! - x[X.heel]!);
-      line(-1, 0, x[X.heel]! - lower[X.heel]!);
-      line(0, 1, upper[X.depower]! - x[X.depower]!);
-      line(0, -1, x[X.depower]! - lower[X.depower]!);
-      for (let i = 0; i < 4; i++) ds1[i] = ds0[i]! + tb[i]! * dHoist;
-      line(th[3]! / armScale, td[3]! / armScale, (upper[X.arm]! - x[X.arm]! - ds1[3]!) / armScale);
-      line(-th[3]! / armScale, -td[3]! / armScale, (x[X.arm]! + ds1[3]! - lower[X.arm]!) / armScale);
-      line(th[2]!, td[2]!, upper[X.rudder]! - x[X.rudder]! - ds1[2]!);
-      line(-th[2]!, -td[2]!, x[X.rudder]! + ds1[2]! - lower[X.rudder]!);
-      for (let k = 0; k < nSide; k++) {
-        let g0 = g[k]! + jacSide[k * X.count + X.hoist]! * dHoist;
-        let a1 = jacSide[k * X.count + X.heel]!;
-        let a2 = jacSide[k * X.count + X.depower]!;
-        for (let i = 0; i < 4; i++) {
-          const d = jacSide[k * X.count + BASIC[i]!]!;
-          g0 += d * ds1[i]!;
-          a1 += d * th[i]!;
-          a2 += d * td[i]!;
+      for (let k = 0; k < nc; k++) {
+        const j = CONTROLS[k]!;
+        for (const sign of SIGNS) {
+          for (let i = 0; i < nc; i++) normals[m * nc + i] = i === k ? sign : 0;
+          limits[m++] = sign > 0 ? upper[j]! - x[j]! : x[j]! - lower[j]!;
         }
-        line(a1, a2, -g0);
+      }
+      for (let k = 2; k < 4; k++) {
+        // Rudder (2) and arm (3) follow from the balances.
+        const j = BASIC[k]!;
+        const scale = j === X.arm ? reach : 1;
+        for (const sign of SIGNS) {
+          for (let i = 0; i < nc; i++) normals[m * nc + i] = (sign * tangents[i]![k]!) / scale;
+          limits[m++] = (sign > 0 ? upper[j]! - x[j]! - ds0[k]! : x[j]! + ds0[k]! - lower[j]!) / scale;
+        }
+      }
+      for (let k = 0; k < nSide; k++) {
+        let g0 = g[k]!;
+        for (let i = 0; i < nc; i++) normals[m * nc + i] = jacSide[k * X.count + CONTROLS[i]!]!;
+        for (let q = 0; q < 4; q++) {
+          const d = jacSide[k * X.count + BASIC[q]!]!;
+          g0 += d * ds0[q]!;
+          for (let i = 0; i < nc; i++) normals[m * nc + i]! += d * tangents[i]![q]!;
+        }
+        limits[m++] = -g0;
       }
       const real = m;
-      line(1, 0, 0.25 * radius);
-      line(-1, 0, 0.25 * radius);
-      line(0, 1, 0.5 * radius);
-      line(0, -1, 0.5 * radius);
+      for (let k = 0; k < nc; k++) {
+        for (const sign of SIGNS) {
+          for (let i = 0; i < nc; i++) normals[m * nc + i] = i === k ? sign : 0;
+          limits[m++] = LONGEST[k]! * radius;
+        }
+      }
 
       if (haveOld && needJacobian) {
         // Damped BFGS on the Lagrangian's gradient.
-        let l1 = grad1 - gradOld1;
-        let l2 = grad2 - gradOld2;
-        for (let k = 0; k < real; k++) {
-          const mu = oldMultipliers[k]!;
-          if (mu === 0) continue;
-          l1 -= mu * (normals[2 * k]! - oldNormals[2 * k]!);
-          l2 -= mu * (normals[2 * k + 1]! - oldNormals[2 * k + 1]!);
+        let sbs = 0;
+        let sy = 0;
+        for (let i = 0; i < nc; i++) {
+          let l = gradient[i]! - gradientOld[i]!;
+          for (let k = 0; k < real; k++) {
+            const mu = oldMultipliers[k]!;
+            if (mu !== 0) l -= mu * (normals[k * nc + i]! - oldNormals[k * nc + i]!);
+          }
+          y[i] = -l;
+          let s = 0;
+          for (let j = 0; j < nc; j++) s += curvature[3 * i + j]! * step[j]!;
+          bs[i] = s;
+          sbs += step[i]! * s;
+          sy += step[i]! * y[i]!;
         }
-        let y1 = -l1;
-        let y2 = -l2;
-        const bs1 = b11 * stepHeel + b12 * stepDepower;
-        const bs2 = b12 * stepHeel + b22 * stepDepower;
-        const sbs = stepHeel * bs1 + stepDepower * bs2;
         if (sbs > 1e-18 * speed) {
-          let sy = stepHeel * y1 + stepDepower * y2;
           if (sy < 0.2 * sbs) {
             const theta = (0.8 * sbs) / (sbs - sy);
-            y1 = theta * y1 + (1 - theta) * bs1;
-            y2 = theta * y2 + (1 - theta) * bs2;
+            for (let i = 0; i < nc; i++) y[i] = theta * y[i]! + (1 - theta) * bs[i]!;
             sy = 0.2 * sbs;
           }
-          b11 += (y1 * y1) / sy - (bs1 * bs1) / sbs;
-          b12 += (y1 * y2) / sy - (bs1 * bs2) / sbs;
-          b22 += (y2 * y2) / sy - (bs2 * bs2) / sbs;
+          for (let i = 0; i < nc; i++)
+            for (let j = 0; j < nc; j++)
+              curvature[3 * i + j]! += (y[i]! * y[j]!) / sy - (bs[i]! * bs[j]!) / sbs;
         }
+        capCurvature(MOST_CURVATURE * speed);
         const floor = 1e-5 * speed;
-        if (b11 < floor) b11 = floor;
-        if (b22 < floor) b22 = floor;
-        if (b11 * b22 - b12 * b12 < 1e-8 * b11 * b22) b12 = 0;
+        for (let i = 0; i < nc; i++) if (!(curvature[4 * i]! > floor)) curvature[4 * i] = floor;
+        for (let i = 0; i < nc; i++)
+          for (let j = 0; j < i; j++) {
+            // A matrix that is hardly positive definite any more loses its coupling.
+            const most = 0.999 * Math.sqrt(curvature[4 * i]! * curvature[4 * j]!);
+            const v = Math.min(most, Math.max(-most, curvature[3 * i + j]!));
+            curvature[3 * i + j] = v;
+            curvature[3 * j + i] = v;
+          }
       }
       const rho = 100 * speed;
-      solvePlaneQp(qp, m, b11, b12, b22, grad1, grad2, rho);
-      const dHeel = qp.p[0]!;
-      const dDepower = qp.p[1]!;
-      const dSpeed = ds1[0]! + th[0]! * dHeel + td[0]! * dDepower;
-      const dLeeway = ds1[1]! + th[1]! * dHeel + td[1]! * dDepower;
-      const dRudder = ds1[2]! + th[2]! * dHeel + td[2]! * dDepower;
-      const dArm = ds1[3]! + th[3]! * dHeel + td[3]! * dDepower;
+      solveStep(m, real, rho);
+      for (let i = 0; i < 4; i++) {
+        let s = ds0[i]!;
+        for (let k = 0; k < nc; k++) s += tangents[k]![i]! * dp[k]!;
+        ds[i] = s;
+      }
+      let gain = 0;
+      for (let k = 0; k < nc; k++) gain += gradient[k]! * dp[k]!;
 
       const cMax = Math.max(Math.abs(c[0]!), Math.abs(c[1]!), Math.abs(c[2]!), Math.abs(c[3]!));
-      const gain = Math.abs(grad1 * dHeel + grad2 * dDepower) + Math.abs(gainHoist);
       const violation = violationAt(x, g);
       if (
         cMax < RESIDUAL_TOLERANCE &&
         violation < 1e-9 &&
         Math.abs(gain) < 1e-8 * speed &&
-        Math.abs(dSpeed) < 1e-8 * speed
+        Math.abs(ds[0]!) < 1e-8 * speed
       ) {
         converged = true;
       }
@@ -314,16 +370,17 @@ export function createOptimiser(model: ForceModel): Optimiser {
       // Keep the step inside what the linearisation can mean.
       let alpha = 1;
       const speedCap = 0.4 * speed;
-      if (Math.abs(dSpeed) > speedCap) alpha = Math.min(alpha, speedCap / Math.abs(dSpeed));
-      if (Math.abs(dLeeway) > 0.15) alpha = Math.min(alpha, 0.15 / Math.abs(dLeeway));
-      if (Math.abs(dRudder) > 0.4) alpha = Math.min(alpha, 0.4 / Math.abs(dRudder));
+      if (Math.abs(ds[0]!) > speedCap) alpha = Math.min(alpha, speedCap / Math.abs(ds[0]!));
+      if (Math.abs(ds[1]!) > 0.15) alpha = Math.min(alpha, 0.15 / Math.abs(ds[1]!));
+      if (Math.abs(ds[2]!) > 0.4) alpha = Math.min(alpha, 0.4 / Math.abs(ds[2]!));
 
       const merit = (xv: Float64Array, cv: Float64Array, viol: number): number => {
         let e = 0;
         for (let i = 0; i < 4; i++) e += Math.abs(adjoint[i]! * cv[i]!);
+        const up = xv[X.hoist]! - upper[X.hoist]!;
         return (
           -xv[X.speed]! +
-          tie * (xv[X.heel]! * xv[X.heel]! + xv[X.depower]! * xv[X.depower]!) +
+          tie * (xv[X.heel]! * xv[X.heel]! + xv[X.depower]! * xv[X.depower]! + up * up) +
           2 * e +
           0.5 * rho * viol
         );
@@ -331,15 +388,13 @@ export function createOptimiser(model: ForceModel): Optimiser {
       const m0 = merit(x, c, violation);
       let accepted = false;
       for (let trial = 0; trial < 3; trial++) {
-        xNew[X.heel] = x[X.heel]! + alpha * dHeel;
-        xNew[X.depower] = x[X.depower]! + alpha * dDepower;
-        xNew[X.speed] = Math.max(vMin, x[X.speed]! + alpha * dSpeed);
-        xNew[X.leeway] = x[X.leeway]! + alpha * dLeeway;
-        xNew[X.rudder] = x[X.rudder]! + alpha * dRudder;
-        xNew[X.arm] = x[X.arm]! + alpha * dArm;
-        xNew[X.hoist] = x[X.hoist]! + alpha * dHoist;
-        xNew[X.depower] = Math.min(upper[X.depower]!, Math.max(lower[X.depower]!, xNew[X.depower]!));
-        xNew[X.heel] = Math.min(upper[X.heel]!, Math.max(lower[X.heel]!, xNew[X.heel]!));
+        xNew.set(x);
+        for (let i = 0; i < 4; i++) xNew[BASIC[i]!]! += alpha * ds[i]!;
+        if (xNew[X.speed]! < vMin) xNew[X.speed] = vMin;
+        for (let k = 0; k < nc; k++) {
+          const j = CONTROLS[k]!;
+          xNew[j] = Math.min(upper[j]!, Math.max(lower[j]!, x[j]! + alpha * dp[k]!));
+        }
         model.residualInto(tws, twa, xNew, cNew);
         if (nSide > 0) model.sideConditionsInto(gNew);
         evaluations++;
@@ -356,7 +411,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
           evaluations++;
           m1 = merit(xNew, cNew, violationAt(xNew, gNew));
         }
-        const small = Math.abs(alpha * dSpeed) < 1e-6 * speed && Math.abs(gain) < 1e-7 * speed;
+        const small = Math.abs(alpha * ds[0]!) < 1e-6 * speed && Math.abs(gain) < 1e-7 * speed;
         if (
           m1 < m0 + 1e-12 * speed ||
           small ||
@@ -370,20 +425,33 @@ export function createOptimiser(model: ForceModel): Optimiser {
       if (!accepted && cMax > 1e-6) accepted = Number.isFinite(cNew[0]!); // keep moving; the region shrinks
       radius = accepted && alpha > 0.5 ? Math.min(1, radius * 2) : Math.max(1e-4, radius * 0.35);
       if (accepted) {
-        stepHeel = xNew[X.heel]! - x[X.heel]!;
-        stepDepower = xNew[X.depower]! - x[X.depower]!;
-        stepHoist = xNew[X.hoist]! - x[X.hoist]!;
-        gradHoistOld = gradHoist;
-        gradOld1 = grad1;
-        gradOld2 = grad2;
-        oldNormals.set(normals);
-        oldMultipliers.set(qp.multipliers);
-        for (let k = real; k < nCons; k++) oldMultipliers[k] = 0;
-        haveOld = true;
+        let largest = Math.abs(ds[0]! / speed);
+        for (let k = 0; k < nc; k++) {
+          step[k] = xNew[CONTROLS[k]!]! - x[CONTROLS[k]!]!;
+          largest = Math.max(largest, Math.abs(step[k]!));
+        }
         x.set(xNew);
         c.set(cNew);
         g.set(gNew);
+        if (options.quick && alpha === 1 && largest < SMALL_STEP && chords < 3) {
+          // On a short step the derivatives hold: the gradient moves by the curvature alone.
+          for (let i = 0; i < nc; i++)
+            for (let j = 0; j < nc; j++) gradient[i]! -= curvature[3 * i + j]! * step[j]!;
+          chords++;
+          needJacobian = false;
+          haveOld = false;
+        } else {
+          gradientOld.set(gradient);
+          oldNormals.set(normals);
+          oldMultipliers.set(multipliers);
+          for (let k = real; k < nCons; k++) oldMultipliers[k] = 0;
+          haveOld = true;
+          needJacobian = true;
+        }
+      } else if (chords > 0) {
+        // A finish on old derivatives that fails gets new ones.
         needJacobian = true;
+        haveOld = false;
       } else {
         needJacobian = false;
         if (radius <= 1e-4) {
@@ -413,16 +481,15 @@ export function createOptimiser(model: ForceModel): Optimiser {
       for (let i = 0; i < 4; i++) col[i] = -(cNew[i]! - c[i]!) / h;
       luSolve(4, lu, pivots, col);
       speedSlope = col[0]!;
-      const mu = qp.multipliers;
-      speedSlope -= (mu[4]! * col[3]!) / armScale;
-      speedSlope += (mu[5]! * col[3]!) / armScale;
-      speedSlope -= mu[6]! * col[2]!;
-      speedSlope += mu[7]! * col[2]!;
+      const at = 2 * nc;
+      speedSlope -= (multipliers[at]! - multipliers[at + 1]!) * col[2]!;
+      speedSlope -= ((multipliers[at + 2]! - multipliers[at + 3]!) * col[3]!) / reach;
       for (let k = 0; k < nSide; k++) {
-        if (mu[8 + k] === 0) continue;
+        const mu = multipliers[at + 4 + k]!;
+        if (mu === 0) continue;
         let dg = (gNew[k]! - g[k]!) / h;
         for (let i = 0; i < 4; i++) dg += jacSide[k * X.count + BASIC[i]!]! * col[i]!;
-        speedSlope -= mu[8 + k]! * dg;
+        speedSlope -= mu * dg;
       }
       if (x[X.arm]! > upper[X.arm]!) x[X.arm] = upper[X.arm]!;
       if (x[X.arm]! < lower[X.arm]!) x[X.arm] = lower[X.arm]!;
@@ -438,8 +505,11 @@ export function createOptimiser(model: ForceModel): Optimiser {
       evaluations,
       iterations,
       speedSlope,
+      curvature: curvature.slice(),
     };
   };
 
   return { model, run };
 }
+
+const SIGNS = [1, -1] as const;

@@ -12,7 +12,14 @@ export interface Solution {
   /** False when the state balances but is not proven to be the fastest. */
   readonly proven: boolean;
   readonly evaluations: number;
+  /** Curvature of speed over the controls there, for a neighbour's start. */
+  readonly curvature: Float64Array;
 }
+
+/** A state to start from: the vector alone, or with the curvature its own solution ended with. */
+export type Start =
+  | Float64Array
+  | { readonly x: Float64Array; readonly curvature?: Float64Array | undefined };
 
 export interface NoSolution {
   readonly ok: false;
@@ -31,9 +38,12 @@ export interface Solver {
    * @param twa true wind angle from the course [rad]
    * @param starts states to start from (neighbours of the polar); none: the survey finds starts
    */
-  solve(tws: number, twa: number, starts: readonly Float64Array[]): Outcome;
-  /** The same from the given starts alone: no survey when they fail. For second looks. */
-  tryFrom(tws: number, twa: number, starts: readonly Float64Array[]): Outcome;
+  solve(tws: number, twa: number, starts: readonly Start[]): Outcome;
+  /**
+   * The same from the given starts alone: no survey when they fail. For second looks.
+   * @param quick states that only fill a grid: see RunOptions
+   */
+  tryFrom(tws: number, twa: number, starts: readonly Start[], quick?: boolean): Outcome;
 }
 
 function isBalance(a: Attempt): boolean {
@@ -44,11 +54,19 @@ export function createSolver(model: ForceModel): Solver {
   const optimiser = createOptimiser(model);
   const survey = createSurvey(model);
 
-  const search = (tws: number, twa: number, starts: readonly Float64Array[], further: boolean): Outcome => {
+  const search = (
+    tws: number,
+    twa: number,
+    starts: readonly Start[],
+    further: boolean,
+    quick = false,
+  ): Outcome => {
     let evaluations = 0;
     let best: Attempt | undefined;
-    const attempt = (start: Float64Array, most?: number): Attempt => {
-      const a = optimiser.run(tws, twa, start, most);
+    const attempt = (start: Start, mostIterations?: number): Attempt => {
+      const from = start instanceof Float64Array ? { x: start } : start;
+      const options = { mostIterations, quick, curvature: 'curvature' in from ? from.curvature : undefined };
+      const a = optimiser.run(tws, twa, from.x, options);
       evaluations += a.evaluations;
       if (isBalance(a)) {
         if (best === undefined || a.x[X.speed]! > best.x[X.speed]!) best = a;
@@ -58,7 +76,7 @@ export function createSolver(model: ForceModel): Solver {
         for (const f of [0.7, 1.3]) {
           const beside = a.x.slice();
           beside[X.speed]! *= f;
-          const b = optimiser.run(tws, twa, beside, most);
+          const b = optimiser.run(tws, twa, beside, { mostIterations });
           evaluations += b.evaluations;
           if (isBalance(b) && (best === undefined || b.x[X.speed]! > best.x[X.speed]!)) best = b;
         }
@@ -73,10 +91,16 @@ export function createSolver(model: ForceModel): Solver {
       residual: a.residual,
       proven: a.optimal,
       evaluations,
+      curvature: a.curvature,
     });
 
     if (!(tws > 0)) {
       return { ok: false, why: 'no drive', reason: 'no wind, no motion', evaluations };
+    }
+    if (starts.length === 0 || further) {
+      const proof = noDrive(model, tws, twa);
+      evaluations += proof.evaluations;
+      if (proof.proven) return { ok: false, why: 'no drive', reason: NO_FORCE, evaluations };
     }
     if (starts.length > 0) for (const s of starts) attempt(s);
     else for (const s of guesses(model)) attempt(s, 20);
@@ -102,7 +126,9 @@ export function createSolver(model: ForceModel): Solver {
           (excess(a) === 0 ? 0 : 1 + excess(a)) - (excess(b) === 0 ? 0 : 1 + excess(b)) || b.x[0]! - a.x[0]!,
       );
       // The fastest start of those that hold, the next clearly slower ones, and the least violating one.
-      const chosen = ranked.slice(0, thorough ? 5 : 3);
+      // Far beyond what the crew can hold no step of the optimiser will mend it: the closer look decides.
+      const hopeless = ranked.length > 0 && ranked.every((p) => p.armExcess > HOPELESS);
+      const chosen = hopeless ? [] : ranked.slice(0, thorough ? 5 : 3);
       for (const p of chosen) {
         const a = attempt(p.x, 25);
         if (!isBalance(a) && (worst === undefined || a.residual < worst.residual)) worst = a;
@@ -124,8 +150,33 @@ export function createSolver(model: ForceModel): Solver {
   return {
     model,
     solve: (tws, twa, starts) => search(tws, twa, starts, true),
-    tryFrom: (tws, twa, starts) => search(tws, twa, starts, false),
+    tryFrom: (tws, twa, starts, quick) => search(tws, twa, starts, false, quick),
   };
+}
+
+/** Excess of the crew's arm over its range beyond which a start is not worth an attempt; judgement. */
+const HOPELESS = 0.3;
+const NO_FORCE = 'the sails give no forward force that exceeds the resistance at any speed';
+/** Ladder of speeds of the proof: lowest and highest over the boat's own speed, and how many. */
+const LADDER = { low: 0.01, high: 2.6, rungs: 22 } as const;
+
+/**
+ * Whether even the most drive stays below the least resistance at every speed. Between two rungs the larger drive is held
+ * against the resistance of the slower one, so that nothing slips through.
+ */
+function noDrive(model: ForceModel, tws: number, twa: number): { proven: boolean; evaluations: number } {
+  const at = model.boundsAt;
+  if (at === undefined) return { proven: false, evaluations: 0 };
+  let slower: { drive: number; resistance: number } | undefined;
+  for (let k = 0; k <= LADDER.rungs; k++) {
+    const v = model.speedScale * LADDER.low * (LADDER.high / LADDER.low) ** (k / LADDER.rungs);
+    const here = at(tws, twa, v);
+    if (here.drive > here.resistance) return { proven: false, evaluations: k + 1 };
+    if (slower !== undefined && Math.max(slower.drive, here.drive) > slower.resistance)
+      return { proven: false, evaluations: k + 1 };
+    slower = here;
+  }
+  return { proven: true, evaluations: LADDER.rungs + 1 };
 }
 
 /** Starts where nothing is known: at displacement speed and planing, at full power and eased. */
@@ -171,7 +222,7 @@ function diagnose(
       why: 'no drive',
       reason: survey.anyDrive
         ? 'drive exceeds resistance at no speed at which leeway, heel and helm also balance'
-        : 'the sails give no forward force that exceeds the resistance at any speed',
+        : NO_FORCE,
     };
   }
   const arm = Math.min(...survey.points.map((p) => p.armExcess));

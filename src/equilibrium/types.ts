@@ -48,6 +48,11 @@ export interface ForceModel {
    */
   readonly sideConditions: number;
   sideConditionsInto(out: Float64Array): void;
+  /**
+   * Optional bounds that no heel, trim, leeway or easing can beat, at a speed [m/s]: most drive and least resistance, over
+   * weight. They prove "no drive" cheaply where even the bounds leave none.
+   */
+  boundsAt?(tws: number, twa: number, speed: number): { readonly drive: number; readonly resistance: number };
   /** Names of the side conditions, for reports. */
   readonly sideConditionNames: readonly string[];
   /**
@@ -105,6 +110,11 @@ export interface SailingState {
   readonly residual: number;
   readonly evaluations: number;
   readonly notes: readonly string[];
+  /**
+   * Speed [m/s] of a slower state in which the same boat also stays at this wind and angle: she can stay planing, but may
+   * not get there by herself. Left out where none is known.
+   */
+  readonly slowerSpeed?: number | undefined;
 }
 
 export interface NoState {
@@ -132,6 +142,38 @@ export interface ForceRow {
   readonly yaw: number;
 }
 
+/** Resultants of air and water and where they act. Lengths m, forces N; x forward of amidships, z above the waterline. */
+export interface LinesOfAction {
+  readonly air: {
+    readonly forward: number;
+    readonly leeward: number;
+    /** Height along the mast of the side force. */
+    readonly z: number;
+    readonly x: number;
+    /** Distance to leeward in plan, by heel. */
+    readonly planOffset: number;
+  };
+  readonly water: {
+    readonly forward: number;
+    readonly leeward: number;
+    readonly depth: number;
+    readonly x: number;
+    readonly planOffset: number;
+  };
+  /** Distance [m] by which the two pass each other in plan: without the rudder's share they would turn the boat. */
+  readonly lead: number;
+  readonly crewWeight: number;
+  readonly crewHeight: number;
+  readonly boatWeight: number;
+  readonly massHeight: number;
+  readonly length: number;
+  readonly beam: number;
+  readonly freeboard: number;
+  readonly canoeDraft: number;
+  readonly draft: number;
+  readonly mastTop: number;
+}
+
 export interface ForceBalance {
   readonly state: SailingState;
   readonly rows: readonly ForceRow[];
@@ -141,6 +183,8 @@ export interface ForceBalance {
     readonly roll: number;
     readonly yaw: number;
   };
+  /** Where the resultants act, for a sketch. */
+  readonly lines: LinesOfAction;
   /** Facts beside the table: stall margins, centre of effort, GZ and so on. */
   readonly facts: readonly { readonly name: string; readonly value: number; readonly unit: string }[];
 }

@@ -18,6 +18,12 @@ export interface BestVmg {
 /** Angle tolerance [rad] of the tangent condition's root. */
 const ANGLE_TOLERANCE = 1e-6;
 
+/** What is sought over the angle: a weight on speed and its slope there. */
+interface Aim {
+  readonly weight: (twa: number) => number;
+  readonly slope: (twa: number) => number;
+}
+
 /**
  * Best velocity made good to windward (direction 1) or to leeward (direction -1) as a true optimum of the
  * solver: the root of d(V cos twa)/d twa = V' cos twa - V sin twa, with V' from the envelope theorem, bracketed
@@ -31,13 +37,25 @@ export function bestVmg(
   seeds: readonly Seed[],
   direction: 1 | -1,
 ): BestVmg | undefined {
+  return optimumAngle(solver, tws, seeds, {
+    weight: (twa) => direction * Math.cos(twa),
+    slope: (twa) => -direction * Math.sin(twa),
+  });
+}
+
+/** The fastest angle of a wind speed, likewise: the root of V'. */
+export function fastestAngle(solver: Solver, tws: number, seeds: readonly Seed[]): BestVmg | undefined {
+  return optimumAngle(solver, tws, seeds, { weight: () => 1, slope: () => 0 });
+}
+
+function optimumAngle(solver: Solver, tws: number, seeds: readonly Seed[], aim: Aim): BestVmg | undefined {
   const solved = seeds
     .filter((s): s is Seed & { outcome: Solution } => s.outcome.ok)
     .sort((a, b) => a.twa - b.twa);
   let k = -1;
   let top = 0;
   for (let i = 0; i < solved.length; i++) {
-    const v = direction * solved[i]!.outcome.speed * Math.cos(solved[i]!.twa);
+    const v = solved[i]!.outcome.speed * aim.weight(solved[i]!.twa);
     if (v > top) {
       top = v;
       k = i;
@@ -54,7 +72,7 @@ export function bestVmg(
     let nearest = known[0]!;
     for (const c of known) if (Math.abs(c.twa - twa) < Math.abs(nearest.twa - twa)) nearest = c;
     if (Math.abs(nearest.twa - twa) < 1e-12) return nearest.solution;
-    const r = solver.solve(tws, twa, [nearest.solution.x]);
+    const r = solver.tryFrom(tws, twa, [nearest.solution]);
     evaluations += r.evaluations;
     if (!r.ok) return undefined;
     known.push({ twa, solution: r });
@@ -62,12 +80,12 @@ export function bestVmg(
   };
   const vmgAt = (twa: number): number => {
     const s = solveAt(twa);
-    return s === undefined ? -1e9 : direction * s.speed * Math.cos(twa);
+    return s === undefined ? -1e9 : s.speed * aim.weight(twa);
   };
   /** Slope of the made-good speed; a failed state counts as rising away from it. */
   const slopeAt = (twa: number, failed: number): number => {
     const s = solveAt(twa);
-    return s === undefined ? failed : direction * (s.speedSlope * Math.cos(twa) - s.speed * Math.sin(twa));
+    return s === undefined ? failed : s.speedSlope * aim.weight(twa) + s.speed * aim.slope(twa);
   };
 
   const left = k > 0 ? solved[k - 1]!.twa : Math.max(0.5 * centre.twa, centre.twa - (5 * Math.PI) / 180);
@@ -77,7 +95,7 @@ export function bestVmg(
   const keep = (twa: number, tangent: boolean): void => {
     const s = solveAt(twa);
     if (s === undefined) return;
-    const v = direction * s.speed * Math.cos(twa);
+    const v = s.speed * aim.weight(twa);
     if (v > best.vmg || (tangent && v >= best.vmg * (1 - 1e-12)))
       best = { twa, solution: s, vmg: v, tangent };
   };
@@ -92,7 +110,7 @@ export function bestVmg(
     const root = bracketedRoot((t) => slopeAt(t, t < centre.twa ? 1 : -1), left, hi, ANGLE_TOLERANCE);
     const s = solveAt(root);
     if (s !== undefined) {
-      const slope = direction * (s.speedSlope * Math.cos(root) - s.speed * Math.sin(root));
+      const slope = s.speedSlope * aim.weight(root) + s.speed * aim.slope(root);
       keep(root, Math.abs(slope) < 1e-4 * s.speed);
     }
   }

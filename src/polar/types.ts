@@ -12,6 +12,10 @@ export interface Polar {
   /** Best VMG to windward and to leeward for each wind speed, true optima found on the solver. */
   readonly bestUp: readonly SailingResult[];
   readonly bestDown: readonly SailingResult[];
+  /** Fastest angle of each wind speed. */
+  readonly fastest: readonly SailingResult[];
+  /** Every sail set's own speed [m/s] at [i][j]; NaN where it does not balance. */
+  readonly sets: readonly { readonly name: string; readonly speed: readonly (readonly number[])[] }[];
   readonly evaluations: number;
 }
 

@@ -8,7 +8,7 @@ import { fixed, rounded, significant } from './numbers.js';
 import { staticPage } from './page-shell.js';
 import { oneLine, shortened, wrapped } from './plain-text.js';
 import { halfPolarsSvg } from './polar-halves.js';
-import { TEXT_WIDTH, table, warningText } from './text-table.js';
+import { TEXT_WIDTH, textTable, warningText } from './text-table.js';
 
 /** Everything a comparison's outputs are written from. Plain data. */
 export interface ComparisonReport {
@@ -127,7 +127,7 @@ export function comparisonText(r: ComparisonReport): string {
       ),
     );
   parts.push(
-    table(
+    textTable(
       [
         { head: 'variant', unit: '', left: true },
         { head: 'changed', unit: '', left: true },
@@ -142,7 +142,7 @@ export function comparisonText(r: ComparisonReport): string {
   );
   const drawn = c.draws > 0;
   parts.push(
-    table(
+    textTable(
       [
         { head: '', unit: '' },
         { head: 'boat', unit: '', left: true },
@@ -218,7 +218,7 @@ export function comparisonText(r: ComparisonReport): string {
     });
   }
   parts.push(
-    table(
+    textTable(
       [
         { head: 'boat', unit: '', left: true },
         { head: 'TWS', unit: 'kn' },

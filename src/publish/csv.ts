@@ -75,6 +75,7 @@ export function polarCsv(report: PolarReport, decimals = 3): string {
     for (const state of row) lines.push(polarRow('grid', state, d));
     lines.push(polarRow('best VMG up', polar.bestUp[i]!, d));
     lines.push(polarRow('best VMG down', polar.bestDown[i]!, d));
+    lines.push(polarRow('fastest', polar.fastest[i]!, d));
   });
   return `${lines.join('\r\n')}\r\n`;
 }

@@ -2,7 +2,9 @@ import { createHash } from 'node:crypto';
 import { readFileSync } from 'node:fs';
 import { createRequire } from 'node:module';
 import type { SailingResult } from '../equilibrium/index.js';
+import { balanceHtml } from './balance-html.js';
 import { CAUTIONS, ERROR_BANDS, ERROR_BANDS_SOURCE, METHODS } from './cautions.js';
+import { crossoverHtml } from './crossover.js';
 import { escapeHtml } from './escape.js';
 import { type Decimals, decimalsFor, fixed, rounded, significant } from './numbers.js';
 import { PAGE_SCRIPT } from './page-script.js';
@@ -10,6 +12,8 @@ import { PAGE_STYLE } from './page-style.js';
 import { fileStem, oneLine } from './plain-text.js';
 import { figures, type PolarReport, type StateFigures } from './report.js';
 import { resistanceHtml } from './resistance.js';
+import { rightingHtml } from './righting.js';
+import { sailChartsHtml } from './sail-view.js';
 import { COLOURS, seriesStyle } from './series-style.js';
 
 /** A value as JSON that may stand in a script element. */
@@ -246,7 +250,10 @@ function boatHtml(report: PolarReport): string {
         return `<tr>${td(oneLine(r.quantity), 'text wide')}${td(value)}${td(r.unit, 'text')}</tr>`;
       })
       .join('');
-    return `<table><caption>${escapeHtml(oneLine(section))}</caption><thead><tr>${th('quantity', '', true)}${th('value')}${th('unit', '', true)}</tr></thead><tbody>${rows}</tbody></table>`;
+    return scrolling(
+      `Quantities: ${oneLine(section)}`,
+      `<table><caption>${escapeHtml(oneLine(section))}</caption><thead><tr>${th('quantity', '', true)}${th('value')}${th('unit', '', true)}</tr></thead><tbody>${rows}</tbody></table>`,
+    );
   });
   const estimates = boat.estimates
     .map(
@@ -316,6 +323,7 @@ export function polarPage(report: PolarReport, decimals = 2): string {
   const name = escapeHtml(oneLine(boat.name));
   const note = oneLine(boat.note);
   const height = significant(polar.windHeight, 3);
+  const sails = sailChartsHtml(report.sails);
   return `<!doctype html>
 <html lang="en">
 <head>
@@ -333,20 +341,21 @@ export function polarPage(report: PolarReport, decimals = 2): string {
 <h1>${name}</h1>
 <p>Predicted speeds in true winds of ${escapeHtml(polar.tws.map((_, i) => fixed(figures(polar.bestUp[i]!).twsKn, 1).replace(/\.0$/, '')).join(', '))} kn at ${height} m above flat water.</p>
 ${note === '' ? '' : `<p class="soft note">${escapeHtml(note)}</p>`}
-<nav aria-label="Parts of this page"><a href="#diagram">diagram</a><a href="#targets">best VMG</a><a href="#states">all states</a><a href="#resistance">resistance</a><a href="#boat">the boat</a><a href="#trust">how far to trust it</a><a href="#methods">methods</a><a href="#cautions">cautions</a></nav>
+<nav aria-label="Parts of this page"><a href="#diagram">diagram</a><a href="#targets">best VMG</a><a href="#states">all states</a>${polar.sets.length > 1 ? '<a href="#crossover">which sails when</a>' : ''}<a href="#balance">forces</a><a href="#righting-moment">righting moment</a><a href="#sails">sails</a><a href="#resistance">resistance</a><a href="#boat">the boat</a><a href="#trust">how far to trust it</a><a href="#methods">methods</a><a href="#cautions">cautions</a></nav>
 </header>
 <main>
 <div class="pair">
 <section id="diagram" aria-labelledby="diagram-title">
 <h2 id="diagram-title">Polar diagram</h2>
 <p class="soft">Boat speed in knots outward, true wind angle from the course around; diamonds mark best VMG. Each line bears its true wind speed where it ends. Gaps are angles without a balanced state.</p>
-<div id="polar" role="img" aria-label="Polar diagram: boat speed over true wind angle, one line for each wind speed. The tables on this page hold the same figures."></div>
+<div id="polar" role="figure" aria-label="Polar diagram: boat speed over true wind angle, one line for each wind speed. The tables on this page hold the same figures."></div>
 <noscript><p>The diagram needs scripts; the tables hold the same figures.</p></noscript>
 </section>
 <section id="targets" aria-labelledby="targets-title">
 <h2 id="targets-title">Best VMG</h2>
 ${targetHtml('To windward', polar.bestUp, d)}
 ${targetHtml('To leeward', polar.bestDown, d)}
+${targetHtml('Fastest angle', polar.fastest, d)}
 <h3>How to read it</h3>
 <dl>
 <dt>TWS, TWA</dt><dd>true wind speed, and angle from the course through the water</dd>
@@ -361,6 +370,28 @@ ${targetHtml('To leeward', polar.bestDown, d)}
 <section id="states" aria-labelledby="states-title">
 <h2 id="states-title">All states, by wind speed</h2>
 ${polar.tws.map((_, i) => fullTable(report, i, d)).join('\n')}
+</section>
+${
+  polar.sets.length > 1
+    ? `<section id="crossover" aria-labelledby="crossover-title">
+<h2 id="crossover-title">Which sails when</h2>
+${crossoverHtml(polar)}
+</section>`
+    : ''
+}
+<section id="balance" aria-labelledby="balance-title">
+<h2 id="balance-title">Balance of forces</h2>
+${report.balances.map((b, i) => balanceHtml(b, `balance-${i}`)).join('\n')}
+</section>
+<section id="righting-moment" aria-labelledby="righting-title">
+<h2 id="righting-title">Righting moment</h2>
+${rightingHtml(report.righting)}
+</section>
+<section id="sails" aria-labelledby="sails-title">
+<h2 id="sails-title">The sails</h2>
+<p class="soft">Coefficients on each set's own area, upright, at full power, by apparent wind angle.</p>
+${sails.coefficients}
+${sails.loadings}
 </section>
 <section id="resistance" aria-labelledby="resistance-title">
 <h2 id="resistance-title">Resistance of the hull</h2>

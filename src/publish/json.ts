@@ -3,6 +3,7 @@ import { degrees, toKnots } from '../units/index.js';
 import { CAUTIONS, ERROR_BANDS, ERROR_BANDS_SOURCE, METHODS } from './cautions.js';
 import { rounded } from './numbers.js';
 import { type BoatFacts, figures, type PolarReport } from './report.js';
+import type { SailReport } from './sail-report.js';
 
 type Json = null | boolean | number | string | readonly Json[] | { readonly [key: string]: Json };
 
@@ -32,6 +33,9 @@ function state(r: SailingResult): Json {
     sails: f.sailSet,
     regime: f.regime,
     notes: f.notes,
+    ...(r.status === 'balanced' && r.slowerSpeed !== undefined
+      ? { slower_state_kn: rounded(toKnots(r.slowerSpeed)) }
+      : {}),
   };
 }
 
@@ -71,6 +75,7 @@ export function polarJson(report: PolarReport): string {
       tws_kn: rounded(toKnots(polar.tws[i]!)),
       best_vmg_up: state(polar.bestUp[i]!),
       best_vmg_down: state(polar.bestDown[i]!),
+      fastest: state(polar.fastest[i]!),
       states: row.map(state),
     })),
     error_bands: {
@@ -88,13 +93,20 @@ export function boatJson(facts: BoatFacts): string {
 }
 
 /** One state with its forces and moments, or why there is none. */
-export function balanceJson(facts: BoatFacts, result: SailingResult, balance?: ForceBalance): string {
+export function balanceJson(
+  facts: BoatFacts,
+  result: SailingResult,
+  balance?: ForceBalance,
+  free?: SailingResult,
+): string {
   return text({
     content: 'force balance',
     version: 1,
     boat: facts.name,
     state: state(result),
+    ...(free && { free_state: state(free) }),
     ...(balance && {
+      lead_m: rounded(balance.lines.lead),
       rows: balance.rows.map((r) => ({
         group: r.group,
         name: r.name,
@@ -112,5 +124,41 @@ export function balanceJson(facts: BoatFacts, result: SailingResult, balance?: F
       facts: balance.facts.map((f) => ({ name: f.name, value: rounded(f.value), unit: f.unit })),
     }),
     cautions: CAUTIONS,
+  });
+}
+
+/** Coefficients and loadings of every sail set. */
+export function sailReportJson(report: SailReport): string {
+  const list = (values: ArrayLike<number>, factor = 1): Json =>
+    Array.from(values, (v) => rounded(v * factor));
+  return text({
+    boat: report.boat,
+    sail_sets: report.sets.map((s) => ({
+      name: s.name,
+      area_m2: rounded(s.area),
+      coefficients: s.rows.map((r) => ({
+        awa_deg: rounded(degrees(r.awa)),
+        lift: rounded(r.lift),
+        drag: rounded(r.drag),
+        drag_with_windage: rounded(r.dragWithWindage),
+        drive: rounded(r.drive),
+        side: rounded(r.side),
+        centre_height_m: rounded(r.height),
+        centre_aft_of_stem_m: rounded(0.5 * report.lwl - r.x),
+      })),
+      loadings: s.loadings.map((l) => ({
+        awa_deg: rounded(l.awaDeg),
+        moment_kept: l.kept,
+        sails: l.sails.map((x) => ({
+          sail: x.sail,
+          height_m: list(x.z),
+          circulation_m2_s: list(x.circulation),
+          section_lift: list(x.cl),
+          section_limit: list(x.clLimit),
+          inflow_deg: list(x.inflow, 180 / Math.PI),
+          trim_deg: list(x.trim, 180 / Math.PI),
+        })),
+      })),
+    })),
   });
 }

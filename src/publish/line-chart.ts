@@ -53,10 +53,10 @@ export function lineChartSvg(c: LineChart, id: string): string {
   const xs = c.lines.flatMap((l) => l.x);
   const ys = [...c.lines.flatMap((l) => l.y), ...(c.marks ?? []).map((m) => m.y)].filter(Number.isFinite);
   const x0 = Math.min(0, ...xs);
-  const x1 = Math.max(...xs);
+  const x1 = Math.max(x0 + 1e-9, ...xs);
   const y0 = c.yFrom ?? Math.min(0, ...ys);
   const most = Math.max(...ys);
-  const y1 = most + 0.04 * Math.max(Math.abs(most), most - y0);
+  const y1 = most + Math.max(1e-9, 0.04 * Math.max(Math.abs(most), most - y0));
   const height = c.equal ? TOP + BOTTOM + ((y1 - y0) / (x1 - x0)) * (WIDTH - LEFT - RIGHT) : HEIGHT;
   const px = (v: number): number => LEFT + ((v - x0) / (x1 - x0)) * (WIDTH - LEFT - RIGHT);
   const py = (v: number): number => height - BOTTOM - ((v - y0) / (y1 - y0)) * (height - BOTTOM - TOP);

@@ -74,6 +74,8 @@ footer { color: var(--soft); font-size: 0.875rem; }
 .chart-axis { stroke: var(--ink); stroke-width: 1; }
 .chart-shade { fill: var(--accent); fill-opacity: 0.09; }
 .chart-text { fill: var(--ink); font-size: 13px; }
+.cross { fill-opacity: 0.3; }
+.chart.wide > svg { max-height: 420px; }
 .chart-mark { fill: var(--sheet); stroke: var(--ink); stroke-width: 1.5; }
 .chart-key { width: 30px; height: 8px; margin-right: 6px; vertical-align: middle; }
 .chart-legend { list-style: none; padding: 0; display: flex; flex-wrap: wrap; gap: 2px 16px; font-size: 0.8125rem; margin-top: 6px; }

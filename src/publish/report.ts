@@ -1,8 +1,15 @@
 import { type Boat, type DescriptionRow, describeBoat, type Estimate } from '../boat/index.js';
-import type { SailingResult } from '../equilibrium/index.js';
+import {
+  type ForceBalance,
+  forceBalance,
+  type SailingResult,
+  type SailingState,
+} from '../equilibrium/index.js';
 import { type Polar, polarWarnings } from '../polar/index.js';
 import { degrees, toKnots } from '../units/index.js';
 import { type ResistanceReport, resistanceReport } from './resistance.js';
+import { type RightingReport, rightingReport } from './righting.js';
+import { type SailReport, sailReport } from './sail-report.js';
 
 /** What is to be known of the boat in a report. Plain data. */
 export interface BoatFacts {
@@ -18,6 +25,10 @@ export interface PolarReport {
   readonly boat: BoatFacts;
   readonly polar: Polar;
   readonly resistance: ResistanceReport;
+  readonly righting: RightingReport;
+  readonly sails: SailReport;
+  /** Force balances of a few chosen states. */
+  readonly balances: readonly ForceBalance[];
 }
 
 /** The boat's own part of a report. */
@@ -31,11 +42,27 @@ export function boatFacts(boat: Boat): BoatFacts {
   };
 }
 
+/** States worth a look at their forces: best VMG both ways in the middle wind, to windward in the strongest that sails. */
+function chosenStates(polar: Polar): SailingState[] {
+  const balanced = (s: SailingResult | undefined): s is SailingState => s?.status === 'balanced';
+  const middle = Math.floor((polar.tws.length - 1) / 2);
+  const strongest = polar.bestUp.findLast(balanced);
+  const chosen = [polar.bestUp[middle], polar.bestDown[middle], strongest].filter(balanced);
+  return chosen.filter((s, i) => chosen.indexOf(s) === i);
+}
+
 /** A boat and its polar, ready to be published. */
 export function polarReport(boat: Boat, polar: Polar): PolarReport {
   const facts = boatFacts(boat);
   const warnings = [...facts.warnings, ...polarWarnings(boat, polar)];
-  return { boat: { ...facts, warnings }, polar, resistance: resistanceReport(boat) };
+  return {
+    boat: { ...facts, warnings },
+    polar,
+    resistance: resistanceReport(boat),
+    righting: rightingReport(boat, polar),
+    sails: sailReport(boat),
+    balances: chosenStates(polar).map((s) => forceBalance(boat, s)),
+  };
 }
 
 /** A balanced state in knots and degrees. */

@@ -6,7 +6,7 @@ import { escapeHtml } from './escape.js';
 import { fixed, rounded } from './numbers.js';
 import { staticPage } from './page-shell.js';
 import { oneLine, shortened, wrapped } from './plain-text.js';
-import { TEXT_WIDTH, table, warningText } from './text-table.js';
+import { TEXT_WIDTH, textTable, warningText } from './text-table.js';
 import { tornadoSvg } from './tornado.js';
 
 /** What a sensitivity's outputs are written from. Times in s per nautical mile, [wind][leg]. */
@@ -64,7 +64,7 @@ export function sensitivityText(r: SensitivityReport): string {
   return [
     `${shortened(oneLine(r.name), 60)}: seconds per nautical mile for a change of ${percentOf(r.step)}`,
     '',
-    table(
+    textTable(
       [
         { head: 'quantity', unit: '', left: true },
         { head: '', unit: '' },

@@ -10,6 +10,7 @@ export const COLOURS = {
 
 /** The same colours as classes for inline charts. */
 export function seriesStyle(): string {
-  const rules = (colours: readonly string[]): string => colours.map((c, i) => `.s${i}{stroke:${c}}`).join('');
+  const rules = (colours: readonly string[]): string =>
+    colours.map((c, i) => `.s${i}{stroke:${c}}.c${i}{fill:${c}}`).join('');
   return `${rules(COLOURS.light)}@media screen and (prefers-color-scheme: dark){${rules(COLOURS.dark)}}`;
 }

@@ -1,7 +1,7 @@
 import type { Course, WindTable } from '../racecourse/index.js';
 import { fixed } from './numbers.js';
 import { oneLine, shortened, wrapped } from './plain-text.js';
-import { TEXT_WIDTH, table } from './text-table.js';
+import { TEXT_WIDTH, textTable } from './text-table.js';
 
 /** Variants shown of a sweep. */
 const SHOWN = 12;
@@ -24,7 +24,7 @@ export function sweepText(boat: string, course: Course, wind: WindTable, lines: 
     `${shortened(oneLine(boat), 60)}: ${all.length} variants, ${course.name}`,
     wrapped(`wind: ${wind.words}`, TEXT_WIDTH, '  '),
     '',
-    table(
+    textTable(
       [
         { head: '', unit: '' },
         { head: 'variant', unit: '', left: true },

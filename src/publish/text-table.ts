@@ -16,7 +16,7 @@ export interface Column {
 const width = (s: string): number => [...s].length;
 
 /** A table in plain text: headers, units, a rule, rows. Texts to the left, figures to the right. */
-export function table(columns: readonly Column[], rows: readonly (readonly string[] | 'rule')[]): string {
+export function textTable(columns: readonly Column[], rows: readonly (readonly string[] | 'rule')[]): string {
   const units = columns.some((c) => c.unit !== '');
   const widths = columns.map((c, j) =>
     Math.max(width(c.head), width(c.unit), ...rows.map((r) => (r === 'rule' ? 0 : width(r[j] ?? '')))),
@@ -96,7 +96,7 @@ export function targetTable(report: PolarReport, decimals = 2): string {
     add('', 'down', polar.bestDown[i]!);
   });
   const title = `${shortened(oneLine(boat.name), 60)}: best VMG, wind at ${significant(polar.windHeight, 3)} m`;
-  return [title, '', table(TARGET_COLUMNS, rows), ...(notes.length > 0 ? ['', ...notes] : [])].join('\n');
+  return [title, '', textTable(TARGET_COLUMNS, rows), ...(notes.length > 0 ? ['', ...notes] : [])].join('\n');
 }
 
 /** The cautions, one a paragraph, wrapped. */
@@ -106,7 +106,7 @@ export function cautionText(): string {
 
 function stateLines(f: StateFigures): string {
   const line = (name: string, value: string, unit: string): string[] => [name, value, unit];
-  return table(
+  return textTable(
     [
       { head: 'state', unit: '', left: true },
       { head: 'value', unit: '' },
@@ -166,7 +166,7 @@ export function balanceText(boat: BoatFacts, balance: ForceBalance): string {
     rows.push('rule');
   }
   rows.push(cells('sum', '', balance.sum));
-  const forces = table(
+  const forces = textTable(
     [
       { head: 'from', unit: '', left: true },
       { head: 'force or moment', unit: '', left: true },
@@ -177,7 +177,7 @@ export function balanceText(boat: BoatFacts, balance: ForceBalance): string {
     ],
     rows,
   );
-  const facts = table(
+  const facts = textTable(
     [
       { head: 'beside the table', unit: '', left: true },
       { head: 'value', unit: '' },
@@ -213,7 +213,7 @@ export function boatText(boat: BoatFacts): string {
   }
   parts.push(
     '',
-    table(
+    textTable(
       [
         { head: 'part', unit: '', left: true },
         { head: 'quantity', unit: '', left: true },

@@ -1,3 +1,4 @@
+export { priceFor, type SailCoefficients, sailCoefficients } from './coefficients.js';
 export { prepareSailSet } from './prepare.js';
 export { CARRIAGE, type Carriage, sectionLimits } from './section-limits.js';
 export {

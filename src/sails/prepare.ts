@@ -23,10 +23,12 @@ import { profileAt, sailArea } from './shapes.js';
 import { AERO, type SailLoading, type SailSet, type SailSetSpec } from './types.js';
 import { addWindageInto, flowAtInto } from './windage.js';
 
-/** Nodes per sail: drive within 0.4 % and side force within 1.2 % of six times as many. */
-const NODES = 16;
+/** Nodes per sail in the solver: drive and side force within 0.5 % of ten times as many (see the accuracy table). */
+const NODES = 10;
 /** The lift of a section acts this share of the chord behind the leading edge (cambered section at work; judgement). */
 const LIFT_CHORD_SHARE = 0.35;
+/** Lift coefficient of a cambered sail section with its chord along the flow (10 % camber; judgement). */
+const CAMBER_LIFT = 0.6;
 /** The separated normal force acts at this share (flat plate square to the flow: half). */
 const NORMAL_CHORD_SHARE = 0.45;
 
@@ -86,8 +88,9 @@ function bestIncidence(p1: number, p2: number, lowest: number): number {
  * convex problem over the true wind profile (see lifting-line/loading.ts); heel enters by the effective angle
  * (Kerwin 1978). Off the wind the attached family is held at 76 deg and blends into the separated branch
  * (Viterna & Corrigan 1981 for the normal force) as the boom reaches its limit.
+ * @param nodes of each sail's lifting line: more of them for drawings
  */
-export function prepareSailSet(spec: SailSetSpec): SailSet {
+export function prepareSailSet(spec: SailSetSpec, nodes = NODES): SailSet {
   if (spec.sails.length === 0) throw new RangeError(`sail set "${spec.name}" has no sail`);
   const sails = spec.sails;
   const geometry = sails.map(sailArea);
@@ -96,7 +99,7 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
   const centreZ = geometry.reduce((s, g) => s + g.area * g.z, 0) / area;
   const problem = prepareLoading(
     sails.map((s) => ({
-      line: wakeLine(s.z[0]!, s.z[s.z.length - 1]!, NODES),
+      line: wakeLine(s.z[0]!, s.z[s.z.length - 1]!, nodes),
       chordAt: (z: number) => profileAt(s.z, s.chord, z),
       k: s.section.k,
       cl0: s.section.cl0,
@@ -339,9 +342,15 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
         let side = 0;
         let moment = 0;
         const cl = new Float64Array(to - from);
+        const inflow = new Float64Array(to - from);
+        const trim = new Float64Array(to - from);
         for (let i = from; i < to; i++) {
           const gi = priced.x[i]!;
           cl[i - from] = speed[i]! > 0 ? (2 * gi) / (speed[i]! * chord[i]!) : 0;
+          inflow[i - from] = Math.atan2(v[i]!, u[i]!);
+          // Downwash over speed is induced drag over lift at the node.
+          const downwash = gi > 0 ? induced[i]! / (2 * width[i]! * speed[i]! * gi) : 0;
+          trim[i - from] = inflow[i - from]! - downwash - (cl[i - from]! - CAMBER_LIFT) / (2 * Math.PI);
           const lift = rho * width[i]! * speed[i]! * gi;
           const drag = 0.5 * rho * induced[i]!;
           drive += lift * sinB[i]! - drag * cosB[i]!;
@@ -354,6 +363,8 @@ export function prepareSailSet(spec: SailSetSpec): SailSet {
           z: z.slice(from, to),
           circulation: priced.x.slice(from, to),
           cl,
+          inflow,
+          trim,
           clLimit: clMax.slice(from, to),
           drive,
           side,

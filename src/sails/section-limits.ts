@@ -100,5 +100,8 @@ export const SEPARATION_START = 22 * DEGREE;
 export const SEPARATION_END = 40 * DEGREE;
 /** Incidence at which the separated normal force is full (judgement after flat-plate tests). */
 export const FULL_NORMAL_FORCE = 42 * DEGREE;
-/** Drag of a sail that luffs, on its area, when all its load is given up (judgement). */
-export const LUFFING_DRAG = 0.06;
+/**
+ * Drag of a sail that luffs, on its area, when all its load is given up: what a una rig in the tunnel has at no
+ * incidence, 0.097, less its section and its spars (the polar attributed to Marchaj, second-hand).
+ */
+export const LUFFING_DRAG = 0.045;

@@ -61,7 +61,9 @@ export function mainsailShape(d: MainsailDimensions): SailShape {
       const straight = lead - (clewX + (peakX - clewX) * s);
       z.push(d.tackZ + s * height);
       xLead.push(lead);
-      chord.push(straight + 4 * s * (1 - s) * d.roach * 0.5 * d.foot);
+      // At the peak leech and gaff meet: nothing is left, to rounding.
+      const c = straight + 4 * s * (1 - s) * d.roach * 0.5 * d.foot;
+      chord.push(Math.abs(c) < 1e-9 ? 0 : c);
     }
     return { name: d.name, kind, z, chord, xLead, section };
   }

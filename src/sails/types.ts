@@ -108,6 +108,13 @@ export interface SailLoading {
   readonly circulation: Float64Array;
   readonly cl: Float64Array;
   readonly clLimit: Float64Array;
+  /** Apparent wind angle [rad] from the centreline at each node, square to the mast. */
+  readonly inflow: Float64Array;
+  /**
+   * Angle [rad] of the chord from the centreline that gives the section its lift: inflow less downwash less incidence,
+   * for sections that lift CAMBER_LIFT at no incidence. Its change from foot to head is the twist the sail needs.
+   */
+  readonly trim: Float64Array;
   readonly drive: number;
   readonly side: number;
   readonly centreHeight: number;

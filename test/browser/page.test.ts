@@ -23,8 +23,20 @@ const hostile = {
     results: polar.results.map((row) => row.map(spoil)),
     bestUp: polar.bestUp.map(spoil),
     bestDown: polar.bestDown.map(spoil),
+    sets: polar.sets.map((s) => ({ ...s, name: HOSTILE })),
   },
   resistance: report.resistance,
+  righting: report.righting,
+  sails: {
+    ...report.sails,
+    boat: HOSTILE,
+    sets: report.sails.sets.map((s) => ({
+      ...s,
+      name: HOSTILE,
+      loadings: s.loadings.map((l) => ({ ...l, sails: l.sails.map((x) => ({ ...x, sail: HOSTILE })) })),
+    })),
+  },
+  balances: report.balances.map((b) => ({ ...b, state: { ...b.state, sailSet: HOSTILE } })),
 };
 
 let browser: Browser;
@@ -162,8 +174,8 @@ describe('the page in a browser', () => {
 
   it('holds the targets, every state, and the cause where nothing balances', async () => {
     const { page } = open;
-    expect(await page.locator('table.targets tbody tr').count()).toBe(2 * polar.tws.length);
-    expect(await page.locator('details').count()).toBe(polar.tws.length);
+    expect(await page.locator('table.targets tbody tr').count()).toBe(3 * polar.tws.length);
+    expect(await page.locator('#states details').count()).toBe(polar.tws.length);
     const rows = await page.locator('table.states tbody tr:not(.best)').count();
     expect(rows).toBeGreaterThanOrEqual(polar.tws.length * (polar.twa.length - 2));
     const dead = polar.results.flat().filter((r) => r.status === 'unbalanced').length;

@@ -21,6 +21,27 @@ afterAll(() => {
 
 const longest = (text: string): number => Math.max(...text.split('\n').map((l) => [...l].length));
 
+describe('sails', () => {
+  it('prints coefficients and loading of every set, and writes page and table when asked', () => {
+    const run = runCommand(['sails', KEELBOAT], { cwd: folder.path });
+    expect(run.code).toBe(0);
+    expect(folder.list()).toEqual([]);
+    expect(run.out).toMatch(/main and gennaker, \d+/);
+    expect(run.out).toMatch(/wind twist +sail twist/);
+    expect(longest(run.out)).toBeLessThanOrEqual(110);
+    const json = JSON.parse(runCommand(['sails', KEELBOAT, '--json']).out);
+    expect(json.sail_sets[0].coefficients[0].awa_deg).toBe(20);
+    runCommand(['sails', KEELBOAT, '--out', 'plans'], { cwd: folder.path });
+    expect(folder.list()).toEqual([
+      'plans',
+      join('plans', 'keelboat-sails.csv'),
+      join('plans', 'keelboat-sails.html'),
+    ]);
+    const page = readFileSync(join(folder.path, 'plans', 'keelboat-sails.html'), 'utf8');
+    expect(page).not.toMatch(/NaN|n\/a|<script/);
+  });
+});
+
 describe('check with drawings', () => {
   it('draws the hull into a page when asked, and nothing otherwise', () => {
     const plain = runCommand(['check', KEELBOAT], { cwd: folder.path });
@@ -56,6 +77,7 @@ describe('polar', () => {
     expect(longest(run.out)).toBeLessThanOrEqual(100);
     expect(folder.list()).toEqual([
       'reports',
+      join('reports', 'keelboat-crossover.csv'),
       join('reports', 'keelboat-page.html'),
       join('reports', 'keelboat-polar.csv'),
       join('reports', 'keelboat-resistance.csv'),
@@ -64,7 +86,7 @@ describe('polar', () => {
     const csv = readFileSync(join(folder.path, 'reports', 'keelboat-polar.csv'), 'utf8')
       .trimEnd()
       .split('\r\n');
-    expect(csv).toHaveLength(1 + 2 * (6 + 2));
+    expect(csv).toHaveLength(1 + 2 * (6 + 3));
     // The figures of table and results are the same ones.
     const json = JSON.parse(readFileSync(join(folder.path, 'reports', 'keelboat-results.json'), 'utf8'));
     expect(json.tws_kn).toEqual([8, 12]);
@@ -285,7 +307,7 @@ describe('the command line', () => {
     [['polar'], /name a boat file/],
     [['polar', 'x', '--decimals', '9'], /--decimals: "9" is not a whole number from 0 to 6/],
     [['new', 'x', '--kind', 'ship'], /--kind: "ship" is none of dinghy, keelboat/],
-    [[], /name a command: polar, explain, compare, sensitivity, sweep, check, new/],
+    [[], /name a command: polar, explain, compare/],
     [['constructor'], /there is no command "constructor"/],
     [['polar', 'x', '--__proto__', '1'], /there is no option "--__proto__"/],
   ])('answers %j with one message and code 2', async (args, wanted) => {

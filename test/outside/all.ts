@@ -6,6 +6,7 @@ import { checks as hydrostatics } from './hydrostatics.js';
 import { checks as liftingLine } from './lifting-line.js';
 import { checks as planing } from './planing.js';
 import { checks as sailForces } from './sail-forces.js';
+import { checks as sailTheory } from './sail-theory.js';
 import { checks as wholeBoats } from './whole-boats.js';
 import { checks as wind } from './wind.js';
 
@@ -18,6 +19,7 @@ export const allChecks: readonly OutsideCheck[] = [
   ...planing,
   ...foils,
   ...liftingLine,
+  ...sailTheory,
   ...sailForces,
   ...wholeBoats,
 ];

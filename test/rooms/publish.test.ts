@@ -53,8 +53,20 @@ function hostileReport(): PolarReport {
       results: polar.results.map((row) => row.map(spoil)),
       bestUp: polar.bestUp.map(spoil),
       bestDown: polar.bestDown.map(spoil),
+      sets: polar.sets.map((s) => ({ ...s, name: HOSTILE })),
     },
     resistance: report.resistance,
+    righting: { ...report.righting, points: report.righting.points.map((p) => ({ ...p })) },
+    sails: {
+      ...report.sails,
+      boat: HOSTILE,
+      sets: report.sails.sets.map((s) => ({
+        ...s,
+        name: HOSTILE,
+        loadings: s.loadings.map((l) => ({ ...l, sails: l.sails.map((x) => ({ ...x, sail: HOSTILE })) })),
+      })),
+    },
+    balances: report.balances.map((b) => ({ ...b, state: { ...b.state, sailSet: HOSTILE } })),
   };
 }
 
@@ -143,7 +155,7 @@ describe('the polar as comma-separated values', () => {
   it('holds every state of the grid and the best ones, each with all columns', () => {
     const rows = readCsv(polarCsv(report));
     expect(rows[0]).toEqual([...POLAR_COLUMNS]);
-    expect(rows).toHaveLength(1 + 2 * (5 + 2));
+    expect(rows).toHaveLength(1 + 2 * (5 + 3));
     for (const row of rows) expect(row).toHaveLength(POLAR_COLUMNS.length);
     const at = (row: string[], column: (typeof POLAR_COLUMNS)[number]): string =>
       row[POLAR_COLUMNS.indexOf(column)]!;

@@ -208,7 +208,7 @@ export const brokenBoats: readonly BrokenBoat[] = [
   {
     name: 'missing kind of sail',
     text: keelboat('kind: mainsail, ', ''),
-    expect: /:19:9 sails\.main\.kind: missing: one of mainsail, jib/,
+    expect: /:19:9 sails\.main\.kind: missing: one of mainsail, mizzen, jib, spinnaker/,
   },
   {
     name: 'no sails listed',
