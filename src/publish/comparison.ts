@@ -41,6 +41,16 @@ const pointName = (twa: number): string => {
 };
 const nameOf = (text: string, most = 28): string => shortened(oneLine(text), most);
 
+/** What lies outside a method's range: all of the base's, and of the variants what the base does not have. */
+function rangesLeft(r: ComparisonReport): string[] {
+  const own = new Set(r.boats[0]!.warnings.map((w) => `${w.method} ${w.parameter}`));
+  return r.boats.flatMap((b, k) =>
+    b.warnings
+      .filter((w) => k === 0 || !own.has(`${w.method} ${w.parameter}`))
+      .map((w) => `${k === 0 ? 'base' : oneLine(b.name)}: ${warningText(w)}`),
+  );
+}
+
 /** The course in words: legs with their shares, and what manoeuvres cost. */
 function courseWords(c: Comparison): string {
   const legs = c.course.legs.map((l) => `${l.name} ${fixed(100 * l.share, 0)} %`).join(', ');
@@ -218,7 +228,7 @@ export function comparisonText(r: ComparisonReport): string {
       rows,
     ),
   );
-  const beyond = r.boats.flatMap((b) => b.warnings.map((w) => `${oneLine(b.name)}: ${warningText(w)}`));
+  const beyond = rangesLeft(r);
   if (beyond.length > 0)
     parts.push(
       '',
@@ -319,7 +329,7 @@ export function htmlTable(
     if (c.startsWith('<td')) return c;
     return i === 0 ? `<th scope="row"${left(i)}>${c}</th>` : `<td${left(i)}>${c}</td>`;
   };
-  return `<div class="scroll" tabindex="0" role="region" aria-label="${escapeHtml(caption)}"><table><caption>${escapeHtml(caption)}</caption><thead><tr>${head}</tr></thead><tbody>${rows.map((r) => `<tr>${r.map(cell).join('')}</tr>`).join('')}</tbody></table></div>`;
+  return `<div class="scroll" style="margin-bottom:18px" tabindex="0" role="region" aria-label="${escapeHtml(caption)}"><table><caption>${escapeHtml(caption)}</caption><thead><tr>${head}</tr></thead><tbody>${rows.map((r) => `<tr>${r.map(cell).join('')}</tr>`).join('')}</tbody></table></div>`;
 }
 
 /** A cell of a heat map: gains in the accent's colour, losses in the warning's, both by size; the figure has its sign. */
@@ -468,7 +478,7 @@ export function comparisonPage(r: ComparisonReport): string {
       ...c.quicker[i]!.map((p, j) => (i === j ? '' : Number.isFinite(p) ? chance(p) : '-')),
     ]),
   );
-  const warnings = r.boats.flatMap((b) => b.warnings.map((w) => `${oneLine(b.name)}: ${warningText(w)}`));
+  const warnings = rangesLeft(r);
   return staticPage({
     title: `${oneLine(c.names[0]!)}: variants compared`,
     lead: `${courseWords(c)}. Wind: ${c.wind.words}; ${significant(toKnots(c.wind.tws[0]!), 3)} to ${significant(toKnots(c.wind.tws[c.wind.tws.length - 1]!), 3)} kn.`,
@@ -481,7 +491,7 @@ export function comparisonPage(r: ComparisonReport): string {
         html: `<p class="soft">Seconds per nautical mile less the base; negative is quicker. Beat and run by best VMG, every other direction by the quickest mix of two states.</p>${c.names
           .slice(1)
           .map((_, k) => heatMap(c, k + 1))
-          .join('\n')}\n<div class="charts">${curves}</div>`,
+          .join('\n')}\n<div style="max-width:680px">${curves}</div>`,
       },
       ...(drawn
         ? [

@@ -235,7 +235,7 @@ describe('sweep', () => {
   it('killed 20 times at random moments goes on: nothing lost, nothing twice, no half line', async () => {
     const random = seeded(11);
     const out = join(folder.path, 'killed');
-    const vary = 'crew.mass_each = 60 to 100 kg in 60 steps';
+    const vary = 'crew.mass_each = 60 to 100 kg in 120 steps';
     const args = ['sweep', boat, '--vary', vary, '--course', 'reach', '--wind', '8', '--workers', '1'];
     const journal = join(out, 'boat-sweep.jsonl.part');
     const size = (): number => (existsSync(journal) ? statSync(journal).size : 0);
@@ -249,7 +249,7 @@ describe('sweep', () => {
       const early = random() < 0.15;
       while (!early && size() === before && child.exitCode === null)
         await new Promise((r) => setTimeout(r, 3));
-      await new Promise((r) => setTimeout(r, 25 * random()));
+      await new Promise((r) => setTimeout(r, 12 * random()));
       child.kill('SIGKILL');
       await ended;
       if (child.signalCode !== 'SIGKILL') break;
