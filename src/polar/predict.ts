@@ -258,7 +258,7 @@ export function predictPolar(boat: Boat, request: Partial<PolarRequest> = {}): P
         // The reason of the set that came nearest: one that is overpowered has drive.
         const reasons = sets.map((_, n) => outcomes[n]![i]![j]!);
         const told = reasons.findIndex((o) => !o.ok && o.why !== 'no drive' && o !== NOT_TRIED);
-        const n = told >= 0 ? told : 0;
+        const n = Math.max(told, 0);
         return describeOutcome(sets[n]!, windSpeed, angle, reasons[n]!);
       }
       const state = describeState(sets[k]!, windSpeed, angle, outcomes[k]![i]![j] as Solution);

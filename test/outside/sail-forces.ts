@@ -172,7 +172,7 @@ export const checks: readonly OutsideCheck[] = [
     run: () => {
       const limit = 90 * DEG;
       return [50, 60, 70, 80, 90].map((deg) => {
-        const i = TUNNEL.alpha.findIndex((v) => v === deg);
+        const i = (TUNNEL.alpha as readonly number[]).indexOf(deg);
         const a = deg * DEG;
         const measured = TUNNEL.cl[i]! * Math.cos(a) + TUNNEL.cd[i]! * Math.sin(a);
         // The boom at its limit of 90 deg: the incidence is what the apparent angle has beyond it.
