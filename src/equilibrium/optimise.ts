@@ -146,6 +146,18 @@ export function createOptimiser(model: ForceModel): Optimiser {
     for (let i = 0; i < nSide; i++) v += Math.max(0, side[i]!);
     return v;
   };
+  /** The exact penalty by which steps are judged. */
+  const merit = (xv: Float64Array, cv: Float64Array, viol: number, tie: number, rho: number): number => {
+    let e = 0;
+    for (let i = 0; i < 4; i++) e += Math.abs(adjoint[i]! * cv[i]!);
+    const up = xv[X.hoist]! - upper[X.hoist]!;
+    return (
+      -xv[X.speed]! +
+      tie * (xv[X.heel]! * xv[X.heel]! + xv[X.depower]! * xv[X.depower]! + up * up) +
+      2 * e +
+      0.5 * rho * viol
+    );
+  };
   /** Length of the crew's reach; a held arm still needs a scale. */
   const armScale = (): number => Math.max(1e-3, upper[X.arm]! - lower[X.arm]!);
 
@@ -374,18 +386,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
       if (Math.abs(ds[1]!) > 0.15) alpha = Math.min(alpha, 0.15 / Math.abs(ds[1]!));
       if (Math.abs(ds[2]!) > 0.4) alpha = Math.min(alpha, 0.4 / Math.abs(ds[2]!));
 
-      const merit = (xv: Float64Array, cv: Float64Array, viol: number): number => {
-        let e = 0;
-        for (let i = 0; i < 4; i++) e += Math.abs(adjoint[i]! * cv[i]!);
-        const up = xv[X.hoist]! - upper[X.hoist]!;
-        return (
-          -xv[X.speed]! +
-          tie * (xv[X.heel]! * xv[X.heel]! + xv[X.depower]! * xv[X.depower]! + up * up) +
-          2 * e +
-          0.5 * rho * viol
-        );
-      };
-      const m0 = merit(x, c, violation);
+      const m0 = merit(x, c, violation, tie, rho);
       let accepted = false;
       for (let trial = 0; trial < 3; trial++) {
         xNew.set(x);
@@ -398,7 +399,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
         model.residualInto(tws, twa, xNew, cNew);
         if (nSide > 0) model.sideConditionsInto(gNew);
         evaluations++;
-        let m1 = merit(xNew, cNew, violationAt(xNew, gNew));
+        let m1 = merit(xNew, cNew, violationAt(xNew, gNew), tie, rho);
         // Where curvature of the balances spoils a good step, bring the state back onto them with the same factors.
         for (let fix = 0; fix < 2 && m1 >= m0 && alpha > 0.05; fix++) {
           for (let i = 0; i < 4; i++) col[i] = -cNew[i]!;
@@ -409,7 +410,7 @@ export function createOptimiser(model: ForceModel): Optimiser {
           model.residualInto(tws, twa, xNew, cNew);
           if (nSide > 0) model.sideConditionsInto(gNew);
           evaluations++;
-          m1 = merit(xNew, cNew, violationAt(xNew, gNew));
+          m1 = merit(xNew, cNew, violationAt(xNew, gNew), tie, rho);
         }
         const small = Math.abs(alpha * ds[0]!) < 1e-6 * speed && Math.abs(gain) < 1e-7 * speed;
         if (

@@ -4,7 +4,6 @@ import {
   describeOutcome,
   describeState,
   type Outcome,
-  otherSide,
   type SailingResult,
   type SetSolver,
   type Solution,
@@ -30,13 +29,16 @@ export const defaultWindAngles: readonly number[] = Array.from(
 /** Angle [rad] at which the sweep of a wind speed starts: where every boat that sails at all has drive. */
 const SWEEP_START = 95 * DEGREE;
 
-/**
- * Every so many angles a state is also solved from the same angle in less wind, and from the other side of upright: more
- * often for boats that plane or that the crew hold up.
- */
-const CROSS_CHECK = { light: 5, ballasted: 10 } as const;
+/** Every so many radians, and at the last angle, a state is also solved from less wind and from another way to sail her. */
+const CROSS_CHECK = (20 * Math.PI) / 180;
 /** Heel [rad] within which a boat may have a best state on either side of upright. */
 const NEAR_UPRIGHT = 0.1;
+/** Differences in heel [rad] and depower between neighbours that may be two ways of sailing; each is tried on the other. */
+const OTHER_WAY = { heel: 0.06, depower: 0.1 } as const;
+/** Sails slower than this share of the fastest are not looked at from more sides. */
+const RIVAL = 0.97;
+/** Most rounds of trying. */
+const ROUNDS = 6;
 /** Change of speed between neighbours, as a share, that is looked at from all sides. */
 const JUMP = 0.15;
 /** A second balance at the same wind and angle counts as another one when it is slower by this share. */
@@ -51,6 +53,21 @@ const REEF_EASE = 0.01;
 /** The state beyond `near`, seen from `far`: a start, no more. */
 function extrapolated(near: Solution, far: Solution): Start {
   return { x: near.x.map((v, i) => v + 0.9 * (v - far.x[i]!)), curvature: near.curvature };
+}
+
+/**
+ * Another way to sail her: heeled well to the other side where she is near upright, upright and eased where she heels.
+ */
+function otherWay(x: Float64Array): Float64Array {
+  const y = x.slice();
+  if (Math.abs(x[X.heel]!) < NEAR_UPRIGHT) {
+    y[X.heel] = x[X.heel]! > 0.02 ? -0.08 : 0.16;
+    y[X.depower] = 0;
+    return y;
+  }
+  y[X.heel] = 0.4 * x[X.heel]!;
+  y[X.depower] = Math.max(0.15, x[X.depower]!);
+  return y;
 }
 
 const NOT_TRIED: Outcome = {
@@ -69,6 +86,8 @@ interface Sweep {
   readonly slower: number[][];
   evaluations: number;
 }
+
+const speedOf = (o: Outcome): number => (o.ok ? o.speed : 0);
 
 function fastestAt(sweep: Sweep, i: number, j: number): number {
   let best = -1;
@@ -111,8 +130,7 @@ function apparentAngle(tws: number, twa: number, x: Float64Array): number {
 function sweepAll(boat: Boat, tws: readonly number[], twa: readonly number[]): Sweep {
   const sets = createSetSolvers(boat);
   const { wholeOf, stands } = familyOf(sets);
-  const every =
-    boat.spec.hull.planing || boat.spec.keelVolume === 0 ? CROSS_CHECK.light : CROSS_CHECK.ballasted;
+  const byArea = sets.map((_, k) => k).sort((a, b) => sets[a]!.sailSet.area - sets[b]!.sailSet.area);
   const sweep: Sweep = {
     sets,
     outcomes: sets.map(() => tws.map(() => new Array<Outcome>(twa.length).fill(NOT_TRIED))),
@@ -126,6 +144,13 @@ function sweepAll(boat: Boat, tws: readonly number[], twa: readonly number[]): S
     const better = Math.abs(twa[order[i]!]! - SWEEP_START) < Math.abs(twa[order[startAt]!]! - SWEEP_START);
     if (better) startAt = i;
   }
+  // Angles at which every state is looked at from more sides.
+  const checked = order.map((_, n) => {
+    const from = twa[order[startAt]!]!;
+    const part = (k: number): number => Math.floor(Math.abs(twa[order[k]!]! - from) / CROSS_CHECK + 1e-9);
+    const before = n > startAt ? n - 1 : n + 1;
+    return n === startAt || n === 0 || n === order.length - 1 || part(n) !== part(before);
+  });
   const counted = (o: Outcome): Outcome => {
     sweep.evaluations += o.evaluations;
     return o;
@@ -138,8 +163,9 @@ function sweepAll(boat: Boat, tws: readonly number[], twa: readonly number[]): S
   const visit = (i: number, n: number, step: 1 | -1): void => {
     const j = order[n]!;
     const first = n === startAt;
-    const both = (n - startAt) % every === 0;
     const done: Solution[] = [];
+    let topNear = 0;
+    if (!first) for (const o of outcomes) topNear = Math.max(topNear, speedOf(o[i]![order[n - step]!]!));
     for (let k = 0; k < sets.length; k++) {
       const row = outcomes[k]![i]!;
       const near = first ? undefined : row[order[n - step]!];
@@ -148,15 +174,17 @@ function sweepAll(boat: Boat, tws: readonly number[], twa: readonly number[]): S
       const whole = wholeOf[k]! >= 0 ? outcomes[wholeOf[k]!]![i]![j]! : undefined;
       if (whole?.ok && whole.x[X.depower]! < REEF_EASE) continue;
       if (done.length > 0 && apparentAngle(tws[i]!, twa[j]!, done[0]!.x) < stands[k]!) continue;
+      // Sails far from the best at the last angle are carried on, no more.
+      const rival = !(near?.ok && near.speed < RIVAL * topNear);
+      const both = rival && checked[n]!;
       const starts: Start[] = [];
       if (near?.ok) starts.push(far?.ok ? extrapolated(near, far) : near);
       if (slower?.ok && (starts.length === 0 || both)) starts.push(slower);
-      if (near?.ok && both && Math.abs(near.x[X.heel]!) < NEAR_UPRIGHT)
-        starts.push({ x: otherSide(near.x), curvature: near.curvature });
-      if (whole?.ok) starts.push(whole);
+      if (near?.ok && both) starts.push({ x: otherWay(near.x), curvature: near.curvature });
+      if (whole?.ok && (both || starts.length === 0)) starts.push(whole);
       if (starts.length === 0) starts.push(...done);
       let o = starts.length > 0 ? attempt(k, i, j, starts) : NOT_TRIED;
-      if (!o.ok && starts.length > 0) {
+      if (!o.ok && starts.length > 0 && rival) {
         const more = [...(near?.ok ? [near] : []), ...(slower?.ok ? [slower] : []), ...done];
         if (more.length > 0) o = attempt(k, i, j, more, false);
       }
@@ -171,7 +199,10 @@ function sweepAll(boat: Boat, tws: readonly number[], twa: readonly number[]): S
     }
     if (done.length > 0) return;
     // No set balances from anywhere near: each is searched from nothing, until one does, for a reason worth printing.
-    for (let k = 0; k < sets.length; k++) {
+    // Sails that do not stand at such an angle are left; a sail is left whose reefed self is overpowered already.
+    const overpowered = new Set<number>();
+    for (const k of byArea) {
+      if (twa[j]! < stands[k]! || overpowered.has(k)) continue;
       const o = counted(
         done.length > 0
           ? sets[k]!.solver.tryFrom(tws[i]!, twa[j]!, done)
@@ -179,14 +210,69 @@ function sweepAll(boat: Boat, tws: readonly number[], twa: readonly number[]): S
       );
       outcomes[k]![i]![j] = o;
       if (o.ok) done.push(o);
+      else if (o.why === 'overpowered' && wholeOf[k]! >= 0) overpowered.add(wholeOf[k]!);
     }
   };
   for (let i = 0; i < tws.length; i++) {
     for (let n = startAt; n < order.length; n++) visit(i, n, 1);
     for (let n = startAt - 1; n >= 0; n--) visit(i, n, -1);
   }
+  otherWays(sweep, tws, twa, order);
   if (boat.spec.hull.planing) acrossTheHump(boat, sweep, tws, twa, order);
   return sweep;
+}
+
+/**
+ * A boat may be sailed fastest in more than one way, heeled or upright, eased or not, and each way is a summit of its own.
+ * Where neighbours in wind or angle are sailed differently, each way is tried on the other; what wins is passed on.
+ */
+function otherWays(
+  sweep: Sweep,
+  tws: readonly number[],
+  twa: readonly number[],
+  order: readonly number[],
+): void {
+  const { sets, outcomes } = sweep;
+  const differ = (a: Solution, b: Solution): boolean =>
+    Math.abs(a.x[X.heel]! - b.x[X.heel]!) > OTHER_WAY.heel ||
+    Math.abs(a.x[X.depower]! - b.x[X.depower]!) > OTHER_WAY.depower;
+  const tried = new Set<string>();
+  let changed = true;
+  for (let round = 0; round < ROUNDS && changed; round++) {
+    changed = false;
+    for (let i = 0; i < tws.length; i++) {
+      for (let n = 0; n < order.length; n++) {
+        const j = order[n]!;
+        const best = fastestAt(sweep, i, j);
+        if (best < 0) continue;
+        const top = (outcomes[best]![i]![j] as Solution).speed;
+        for (let k = 0; k < sets.length; k++) {
+          const own = outcomes[k]![i]![j]!;
+          // Sets that are far from the fastest may keep a state that is not quite their best.
+          if (!own.ok || own.speed < RIVAL * top) continue;
+          for (const [i2, j2] of [
+            [i, order[n - 1]],
+            [i, order[n + 1]],
+            [i - 1, j],
+            [i + 1, j],
+          ] as const) {
+            const other = j2 === undefined ? undefined : outcomes[k]![i2]?.[j2];
+            const now = outcomes[k]![i]![j] as Solution;
+            if (!other?.ok || !differ(now, other)) continue;
+            const key = `${k},${i},${j},${i2},${j2},${other.speed}`;
+            if (tried.has(key)) continue;
+            tried.add(key);
+            const o = sets[k]!.solver.tryFrom(tws[i]!, twa[j]!, [other], true);
+            sweep.evaluations += o.evaluations;
+            if (o.ok && o.speed > now.speed * (1 + 1e-6)) {
+              outcomes[k]![i]![j] = o;
+              changed = true;
+            }
+          }
+        }
+      }
+    }
+  }
 }
 
 /**
@@ -257,8 +343,9 @@ export function predictPolar(boat: Boat, request: Partial<PolarRequest> = {}): P
       if (k < 0) {
         // The reason of the set that came nearest: one that is overpowered has drive.
         const reasons = sets.map((_, n) => outcomes[n]![i]![j]!);
+        const tried = reasons.findIndex((o) => o !== NOT_TRIED);
         const told = reasons.findIndex((o) => !o.ok && o.why !== 'no drive' && o !== NOT_TRIED);
-        const n = Math.max(told, 0);
+        const n = Math.max(told, tried, 0);
         return describeOutcome(sets[n]!, windSpeed, angle, reasons[n]!);
       }
       const state = describeState(sets[k]!, windSpeed, angle, outcomes[k]![i]![j] as Solution);

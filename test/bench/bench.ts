@@ -5,8 +5,11 @@
  * residual, from the same starts, with fmin's Nelder-Mead on a penalised objective, and
  * ml-levenberg-marquardt on the residual alone (heel and depower given, the solver's own optimum).
  */
-import { readFileSync } from 'node:fs';
+import { execFileSync } from 'node:child_process';
+import { mkdtempSync, readFileSync, rmSync } from 'node:fs';
 import { createRequire } from 'node:module';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
 import { levenbergMarquardt } from 'ml-levenberg-marquardt';
 
 // Measured on the built files, as users run them.
@@ -201,4 +204,67 @@ const alone = few.map((s) => {
 });
 console.log(
   `from nothing against the sweep ${f(100 * Math.max(...alone.map(Math.abs)), 5)} % largest difference in speed`,
+);
+
+console.log('');
+// The same boat with her two plain sets only.
+const plain = assembleBoat({
+  spec: {
+    ...boat.spec,
+    sailSets: boat.spec.sailSets.filter((x) => x.name === 'main and jib' || x.name === 'main alone'),
+  },
+});
+let two = Number.POSITIVE_INFINITY;
+for (let i = 0; i < 5; i++) two = Math.min(two, timed(() => predictPolar(plain)).ms);
+console.log(`full polar, two plain sets     warm ${f(two, 0)} ms (five sets ${f(best, 0)} ms)`);
+
+// Time per state at ten times the states.
+const tenfold = Array.from({ length: 10 * defaultWindSpeeds.length }, (_, i) => {
+  const at = (i * (defaultWindSpeeds.length - 1)) / (10 * defaultWindSpeeds.length - 1);
+  const k = Math.min(defaultWindSpeeds.length - 2, Math.floor(at));
+  return defaultWindSpeeds[k]! + (at - k) * (defaultWindSpeeds[k + 1]! - defaultWindSpeeds[k]!);
+});
+const many = timed(() => predictPolar(boat, { tws: tenfold })).ms;
+console.log(`time per state at 10x states   ${f(many / 10 / best)} of that at 1x`);
+
+// Work spread over worker threads: the same sweep with one and with two.
+const sweep = (workers: number, folder: string): number =>
+  timed(() =>
+    execFileSync(
+      process.execPath,
+      [
+        'bin/polarwright.js',
+        'sweep',
+        'boats/keelboat.yaml',
+        '--vary',
+        'weights.ballast.mass = 480 to 560 kg in 8 steps; sails.main.area = 13 to 15.4 m2 in 8 steps',
+        '--wind',
+        '6,12',
+        '--workers',
+        String(workers),
+        '--out',
+        folder,
+      ],
+      { stdio: 'ignore' },
+    ),
+  ).ms;
+const scratch = mkdtempSync(join(tmpdir(), 'polarwright-bench-'));
+try {
+  const one = sweep(1, join(scratch, 'one'));
+  const both = sweep(2, join(scratch, 'two'));
+  console.log(
+    `sweep of 64 variants           ${f(one / 1000, 1)} s on one worker, ${f(one / both)}x faster on two`,
+  );
+} finally {
+  rmSync(scratch, { recursive: true, force: true });
+}
+const start = (...words: string[]): number =>
+  Math.min(
+    ...[1, 2, 3].map(
+      () =>
+        timed(() => execFileSync(process.execPath, ['bin/polarwright.js', ...words], { stdio: 'ignore' })).ms,
+    ),
+  );
+console.log(
+  `cold process                   --version ${f(start('--version'), 0)} ms, check ${f(start('check', 'boats/keelboat.yaml'), 0)} ms, polar ${f(start('polar', 'boats/keelboat.yaml', '--json'), 0)} ms`,
 );

@@ -1,7 +1,7 @@
 import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import { assembleBoat, readBoat } from '../../src/boat/index.js';
-import { solveState } from '../../src/equilibrium/index.js';
+import { createSetSolvers, solveAlone, solveState } from '../../src/equilibrium/index.js';
 import { predictPolar } from '../../src/polar/index.js';
 import { DEMO_BOATS, demoBoat } from '../support/demo.js';
 import { optimality } from '../support/optimality.js';
@@ -46,6 +46,29 @@ describe('polars in small steps', () => {
       }
     });
   }
+});
+
+describe('a sweep', () => {
+  it('is nowhere slower than each of its states solved from nothing', () => {
+    for (const name of DEMO_BOATS) {
+      const boat = demoBoat(name);
+      const sets = createSetSolvers(boat);
+      const tws = [6, 8, 12, 15, 18, 22].map((v) => v * KNOT);
+      const twa = range(30, 180, 10).map((a) => a * DEG);
+      const polar = predictPolar(boat, { tws, twa });
+      // A third of the states, in turns: each costs some hundred evaluations.
+      polar.results.flat().forEach((s, n) => {
+        if (n % 3 !== 0) return;
+        let alone = 0;
+        for (const set of sets) {
+          const r = solveAlone(set.solver, s.tws, s.twa);
+          if (r.ok) alone = Math.max(alone, r.speed);
+        }
+        const swept = s.status === 'balanced' ? s.speed : 0;
+        expect(alone, `${name} ${s.tws / KNOT} kn ${s.twa / DEG} deg`).toBeLessThanOrEqual(swept * 1.0005);
+      });
+    }
+  });
 });
 
 describe('answers of the solver', () => {
