@@ -22,7 +22,7 @@ const signed = (v: number, decimals: number): string => {
 };
 const deg = (rad: number): string => significant(degrees(rad), 4);
 
-/** How a complete textTable is filled where nothing was computed, a sentence each. */
+/** How a complete table is filled where nothing was computed, a sentence each. */
 export function fillingRules(complete: CompleteTable, completion: Completion, unit: SpeedUnit): string[] {
   const { filled, closest, table: t } = complete;
   const wind = (v: number): string => `${significant(speedIn(unit, v), 4)} ${unit}`;
@@ -43,14 +43,12 @@ export function fillingRules(complete: CompleteTable, completion: Completion, un
   }
   return [
     `Wind at ${t.windHeight === undefined ? 'an unknown height' : `${significant(t.windHeight, 3)} m`}; wind angles from the course through the water.`,
-    `Below ${wind(lowest)}: a row at rest in no wind; what reads the textTable goes in a straight line between the two.`,
+    `Below ${wind(lowest)}: a row at rest in no wind; what reads the table goes in a straight line between the two.`,
     top > highest
       ? `Above ${wind(highest)}, the highest computed wind, up to ${wind(top)}: ${completion.above === 'hold' ? 'the speeds of that wind are held' : 'the speeds fall in a straight line to zero'}.`
       : `Above ${wind(highest)}, the highest computed wind, there is no row.`,
     ...(known.length > 0
-      ? [
-          `No-go zone, closer to the wind than the closest balanced angle of the textTable (${range}): ${noGo}.`,
-        ]
+      ? [`No-go zone, closer to the wind than the closest balanced angle of the table (${range}): ${noGo}.`]
       : []),
     ...[...byWhy].map(
       ([key, places]) =>
@@ -77,7 +75,7 @@ export function deratingText(completion: Completion, unit: SpeedUnit): string {
   return parts.length === 0 ? '' : `${parts.join(', ')}.`;
 }
 
-/** What a textTable was read as. */
+/** What a table was read as. */
 export function readingText(name: string, t: SpeedTable, notes: readonly ReadingNote[]): string {
   const angles = t.rows.map((r) => r.points.length);
   const [least, most] = [Math.min(...angles), Math.max(...angles)];
@@ -96,7 +94,7 @@ export function readingText(name: string, t: SpeedTable, notes: readonly Reading
   ].join('\n');
 }
 
-/** Differences by wind speed: textTable less prediction, in percent of the prediction. */
+/** Differences by wind speed: table less prediction, in percent of the prediction. */
 export function differencesText(summaries: readonly DifferenceSummary[], unit: SpeedUnit): string {
   const pc = (v: number | undefined): string => (v === undefined ? '-' : signed(100 * v, 1));
   const rows = summaries.map((s) => {
@@ -130,7 +128,7 @@ export function differencesText(summaries: readonly DifferenceSummary[], unit: S
     ),
     '',
     wrapped(
-      'Table less prediction, in percent of the predicted speed. "no state": points where the textTable has a speed and no predicted state balances; points without speed in the table are left out of the figures.',
+      'Table less prediction, in percent of the predicted speed. "no state": points where the table has a speed and no predicted state balances; points without speed in the table are left out of the figures.',
       TEXT_WIDTH,
     ),
   ].join('\n');
@@ -168,7 +166,7 @@ export function differencesCsv(differences: readonly TableDifference[], unit: Sp
   return `${[heads, ...lines].map((c) => c.join(',')).join('\r\n')}\r\n`;
 }
 
-/** Charts of a textTable, one for each wind, with the prediction beside it where there is one. */
+/** Charts of a table, one for each wind, with the prediction beside it where there is one. */
 export function tablePage(
   title: string,
   t: SpeedTable,
@@ -223,9 +221,7 @@ export function tablePage(
   return staticPage({
     title: shortened(oneLine(title), 80),
     lead:
-      differences.length > 0
-        ? 'A textTable of boat speeds beside the prediction.'
-        : 'A table of boat speeds.',
+      differences.length > 0 ? 'A table of boat speeds beside the prediction.' : 'A table of boat speeds.',
     sections: [
       { id: 'charts', heading: 'Charts', html: `<div class="charts">${charts.join('\n')}</div>` },
       { id: 'table', heading: 'Table', html: figures },

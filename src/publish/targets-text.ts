@@ -101,7 +101,7 @@ function reachRows(card: TargetCard, { unit, decimals }: TargetStyle): string {
 /** Three figures: enough for two percent of any speed. */
 export const threeFigures = (v: number): string => fixed(v, v < 9.995 ? 2 : 1);
 
-/** A helper textTable as text: find the boat's speed below the wind, read the percent at the left. */
+/** A helper table as text: find the boat's speed below the wind, read the percent at the left. */
 function percentRows(t: PercentTable, { unit }: TargetStyle): string {
   return textTable(
     [{ head: 'percent', unit: '%' }, ...t.tws.map((v) => ({ head: `${fixed(speedIn(unit, v), 1)}`, unit }))],
