@@ -1,15 +1,6 @@
-import {
-  closeSync,
-  existsSync,
-  ftruncateSync,
-  mkdirSync,
-  openSync,
-  readFileSync,
-  rmSync,
-  writeSync,
-} from 'node:fs';
+import { closeSync, existsSync, ftruncateSync, openSync, readFileSync, rmSync, writeSync } from 'node:fs';
 import { dirname } from 'node:path';
-import { rounded } from '../publish/index.js';
+import { makeFolder, rounded } from '../publish/index.js';
 import { UsageError } from './errors.js';
 import type { SweepResult } from './sweep-task.js';
 
@@ -64,7 +55,7 @@ export function openJournal(
   path: string,
   bytes: number,
 ): { add(line: string): void; close(): void; remove(): void } {
-  mkdirSync(dirname(path), { recursive: true });
+  makeFolder(dirname(path));
   const file = openSync(path, 'a');
   ftruncateSync(file, bytes);
   return {

@@ -22,6 +22,7 @@ export { polarPage } from './html.js';
 export { hullPlanPage } from './hull-plan.js';
 export { balanceJson, boatJson, polarJson, sailReportJson } from './json.js';
 export { type LineChart, lineChartSvg } from './line-chart.js';
+export { makeFolder } from './make-folder.js';
 export { decimalsFor, fixed, rounded, significant } from './numbers.js';
 export { fileStem, oneLine, terminalText, wrapped } from './plain-text.js';
 export { TableFileError } from './read-cells.js';

@@ -5,7 +5,6 @@ import {
   fsyncSync,
   linkSync,
   lstatSync,
-  mkdirSync,
   openSync,
   renameSync,
   rmdirSync,
@@ -13,6 +12,7 @@ import {
   writeSync,
 } from 'node:fs';
 import { dirname, join, resolve } from 'node:path';
+import { makeFolder } from './make-folder.js';
 
 /** A file that could not be written: the message names it and says why. */
 export class OutputError extends Error {
@@ -84,7 +84,7 @@ export function writeFiles(
   let made: string | undefined;
   let current = folder;
   try {
-    made = mkdirSync(folder, { recursive: true });
+    made = makeFolder(folder);
     const targets = files.map((f) => join(folder, f.name));
     for (const [i, file] of files.entries()) {
       current = targets[i]!;

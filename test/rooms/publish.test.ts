@@ -1,4 +1,12 @@
-import { mkdirSync, mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import {
+  existsSync,
+  mkdirSync,
+  mkdtempSync,
+  readdirSync,
+  readFileSync,
+  rmSync,
+  writeFileSync,
+} from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
@@ -273,6 +281,12 @@ describe('files', () => {
     expect(readFileSync(join(folder, 'a.txt'), 'utf8')).toBe('old a');
     expect(readdirSync(folder).sort()).toEqual(['a.txt', 'b.txt']);
   });
+  it.skipIf(!existsSync('/proc/self'))('are refused at once where no folder can be made', () => {
+    expect(() => writeFiles('/proc/polarwright/none', [{ name: 'a.txt', content: 'a' }])).toThrow(
+      OutputError,
+    );
+  });
+
   it('come back as they were when a later one of them fails, and no folder stays', () => {
     const long = [files[0]!, { name: `${'n'.repeat(300)}.txt`, content: '' }];
     const astray = [files[0]!, { name: join('no-such-folder', 'b.txt'), content: '' }];
