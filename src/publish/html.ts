@@ -15,6 +15,7 @@ import { resistanceHtml } from './resistance.js';
 import { rightingHtml } from './righting.js';
 import { sailChartsHtml } from './sail-view.js';
 import { COLOURS, seriesStyle } from './series-style.js';
+import { warningText } from './text-table.js';
 
 /** A value as JSON that may stand in a script element. */
 export function scriptJson(value: unknown): string {
@@ -56,17 +57,26 @@ function hoverFacts(f: StateFigures, d: Decimals): string[] {
   ];
 }
 
+/** Marks of the regimes that limit a boat; the others bear none. */
+const REGIME_MARKS: Readonly<Record<string, string>> = {
+  'crew full out': 'circle',
+  easing: 'circle-open',
+  reefed: 'square-open',
+  'heel limited': 'triangle-up-open',
+};
+
 interface Point {
   readonly angle: number;
   readonly speed: number | null;
   readonly facts: readonly string[];
+  readonly regime: string;
 }
 
 function pointOf(r: SailingResult, d: Decimals): Point {
   const f = figures(r);
   const angle = rounded(f.twaDeg, 7) ?? 0;
-  if (f.status === 'unbalanced') return { angle, speed: null, facts: [] };
-  return { angle, speed: rounded(f.speedKn, 6), facts: hoverFacts(f, d) };
+  if (f.status === 'unbalanced') return { angle, speed: null, facts: [], regime: '' };
+  return { angle, speed: rounded(f.speedKn, 6), facts: hoverFacts(f, d), regime: f.regime };
 }
 
 /** Outline of the error band of one wind's curve, out along the high speeds and back along the low ones. */
@@ -133,10 +143,11 @@ function diagramData(report: PolarReport, d: Decimals): unknown {
     const name = fixed(figures(polar.bestUp[i]!).twsKn, 1).replace(/\.0$/, '');
     return {
       name: `${name} kn`,
-      mode: points.length > 1 ? 'lines+text' : 'lines+markers+text',
+      mode: 'lines+markers+text',
       angle: points.map((p) => p.angle),
       speed: points.map((p) => p.speed),
       facts: points.map((p) => p.facts),
+      marks: points.map((p) => REGIME_MARKS[p.regime] ?? ''),
       points,
       band: bandOf(report, i),
       best: {
@@ -287,6 +298,38 @@ function fullTable(report: PolarReport, i: number, d: Decimals): string {
   )}</details>`;
 }
 
+/** Quantities of the glance, by the names they bear in the description. */
+const GLANCE = [
+  'displacement with crew',
+  'waterline length',
+  'waterline beam',
+  'draft',
+  'prismatic coefficient',
+  'length over cube root of volume',
+  'metacentric height GM',
+  'can plane',
+] as const;
+
+/** Warnings first, then the few figures by which people know a boat. */
+function glanceHtml(report: PolarReport): string {
+  const { boat } = report;
+  const warnings =
+    boat.warnings.length === 0
+      ? '<p>Every figure lies within the ranges of the methods used.</p>'
+      : `<p><b>Outside the range of a method:</b></p><ul>${boat.warnings.map((w) => `<li>${escapeHtml(warningText(w))}</li>`).join('')}</ul>`;
+  const rows = [
+    ...GLANCE.map((q) => boat.description.find((r) => r.quantity === q)),
+    ...boat.description.filter((r) => r.section === 'sails' && /^set .*: area$/.test(r.quantity)),
+  ].filter((r) => r !== undefined);
+  const facts = rows
+    .map(
+      (r) =>
+        `<dt>${escapeHtml(oneLine(r.quantity))}</dt><dd>${escapeHtml(typeof r.value === 'number' ? significant(r.value) : oneLine(r.value))} ${escapeHtml(r.unit)}</dd>`,
+    )
+    .join('');
+  return `${warnings}\n<dl class="facts">${facts}</dl>`;
+}
+
 function boatHtml(report: PolarReport): string {
   const { boat } = report;
   const sections = [...new Set(boat.description.map((r) => r.section))].map((section) => {
@@ -388,13 +431,17 @@ export function polarPage(report: PolarReport, decimals = 2): string {
 <h1>${name}</h1>
 <p>Predicted speeds in true winds of ${escapeHtml(polar.tws.map((_, i) => fixed(figures(polar.bestUp[i]!).twsKn, 1).replace(/\.0$/, '')).join(', '))} kn at ${height} m above flat water.</p>
 ${note === '' ? '' : `<p class="soft note">${escapeHtml(note)}</p>`}
-<nav aria-label="Parts of this page"><a href="#diagram">diagram</a><a href="#targets">best VMG</a><a href="#states">all states</a>${polar.sets.length > 1 ? '<a href="#crossover">which sails when</a>' : ''}<a href="#balance">forces</a><a href="#righting-moment">righting moment</a><a href="#sails">sails</a><a href="#resistance">resistance</a><a href="#boat">the boat</a><a href="#trust">how far to trust it</a><a href="#methods">methods</a><a href="#cautions">cautions</a></nav>
+<nav aria-label="Parts of this page"><a href="#glance">at a glance</a><a href="#diagram">diagram</a><a href="#targets">best VMG</a><a href="#states">all states</a>${polar.sets.length > 1 ? '<a href="#crossover">which sails when</a>' : ''}<a href="#balance">forces</a><a href="#righting-moment">righting moment</a><a href="#sails">sails</a><a href="#resistance">resistance</a><a href="#boat">the boat</a><a href="#trust">how far to trust it</a><a href="#methods">methods</a><a href="#cautions">cautions</a></nav>
 </header>
 <main>
+<section id="glance" aria-labelledby="glance-title">
+<h2 id="glance-title">At a glance</h2>
+${glanceHtml(report)}
+</section>
 <div class="pair">
 <section id="diagram" aria-labelledby="diagram-title">
 <h2 id="diagram-title">Polar diagram</h2>
-<p class="soft">Boat speed in knots outward, true wind angle from the course around; diamonds mark best VMG. Each line bears its true wind speed where it ends. Gaps are angles without a balanced state.</p>
+<p class="soft">Boat speed in knots outward, true wind angle from the course around; diamonds mark best VMG. Each line bears its true wind speed where it ends. Gaps are angles without a balanced state. Dots: crew full out; open circles: easing; open squares: reefed; open triangles: at the accepted heel.</p>
 <div id="polar" role="figure" aria-label="Polar diagram: boat speed over true wind angle, one line for each wind speed. The tables on this page hold the same figures."></div>
 <noscript><p>The diagram needs scripts; the tables hold the same figures.</p></noscript>
 </section>

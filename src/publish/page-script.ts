@@ -26,7 +26,8 @@ export const PAGE_SCRIPT = `
         type: 'scatterpolar', mode: c.mode, name: c.name, legendgroup: c.name,
         r: c.speed, theta: c.angle, text: c.label, textposition: c.labelPlace, cliponaxis: false,
         textfont: { color: colour, size: narrow.matches ? 10 : 12 }, customdata: c.facts, hovertemplate: data.hover, connectgaps: false,
-        line: { color: colour, width: 2, dash: dash }, marker: { color: colour, size: 5 }
+        line: { color: colour, width: 2, dash: dash },
+        marker: { color: colour, size: c.marks.map(function (m) { return m ? 6 : c.speed.length > 1 ? 0 : 5; }), symbol: c.marks.map(function (m) { return m || 'circle'; }), line: { width: 1.2, color: colour } }
       });
       out.push({
         type: 'scatterpolar', mode: 'markers', name: c.name + ', best VMG', legendgroup: c.name, showlegend: false,

@@ -60,6 +60,10 @@ summary b { display: inline-block; min-width: 4.5em; }
 dl { margin: 0; display: grid; grid-template-columns: max-content 1fr; gap: 4px 16px; }
 dt { font-weight: 600; }
 dd { margin: 0; max-width: 70ch; }
+dl.facts { display: block; columns: 3 22ch; margin-top: 14px; }
+dl.facts dt, dl.facts dd { break-inside: avoid; }
+dl.facts dt { break-after: avoid; font-weight: 400; color: var(--soft); }
+dl.facts dd { margin-bottom: 6px; }
 .cautions { background: var(--warn-ground); border-color: var(--warn); }
 .cautions h2 { color: var(--warn); }
 .cautions li { margin-bottom: 6px; max-width: 78ch; }

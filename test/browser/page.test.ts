@@ -121,7 +121,9 @@ const GROUND = `getComputedStyle(document.body).backgroundColor`;
 
 /** Points at the first best-VMG mark of the diagram and reads the label that appears. */
 async function pointedAt(page: Page): Promise<string> {
-  const mark = await page.locator('#polar .scatterlayer .trace .points path').first().boundingBox();
+  // Every curve is followed by its best-VMG marks.
+  const marks = page.locator('#polar .scatterlayer .trace').nth(1).locator('.points path');
+  const mark = await marks.first().boundingBox();
   await page.mouse.move(mark!.x + mark!.width / 2, mark!.y + mark!.height / 2);
   const label = page.locator('#polar .hoverlayer .hovertext').first();
   await label.waitFor();
