@@ -123,6 +123,7 @@ const GROUND = `getComputedStyle(document.body).backgroundColor`;
 async function pointedAt(page: Page): Promise<string> {
   // Every curve is followed by its best-VMG marks.
   const marks = page.locator('#polar .scatterlayer .trace').nth(1).locator('.points path');
+  await marks.first().scrollIntoViewIfNeeded();
   const mark = await marks.first().boundingBox();
   await page.mouse.move(mark!.x + mark!.width / 2, mark!.y + mark!.height / 2);
   const label = page.locator('#polar .hoverlayer .hovertext').first();
