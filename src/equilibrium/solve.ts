@@ -65,7 +65,11 @@ export function createSolver(model: ForceModel): Solver {
     let best: Attempt | undefined;
     const attempt = (start: Start, mostIterations?: number): Attempt => {
       const from = start instanceof Float64Array ? { x: start } : start;
-      const options = { mostIterations, quick, curvature: 'curvature' in from ? from.curvature : undefined };
+      const options = {
+        mostIterations: mostIterations ?? (quick ? QUICK_ITERATIONS : undefined),
+        quick,
+        curvature: 'curvature' in from ? from.curvature : undefined,
+      };
       const a = optimiser.run(tws, twa, from.x, options);
       evaluations += a.evaluations;
       if (isBalance(a)) {
@@ -117,8 +121,10 @@ export function createSolver(model: ForceModel): Solver {
 
     let seen: Survey | undefined;
     let worst: Attempt | undefined;
+    let hopeless = false;
     for (const thorough of [false, true]) {
-      seen = survey(tws, twa, thorough);
+      // Where the first look found her far overpowered at every start, the closer one looks at eased sails only.
+      seen = survey(tws, twa, thorough, hopeless);
       evaluations += seen.evaluations;
       const excess = (p: Survey['points'][number]): number => p.armExcess + p.rudderExcess + p.foilExcess;
       const ranked = [...seen.points].sort(
@@ -127,7 +133,7 @@ export function createSolver(model: ForceModel): Solver {
       );
       // The fastest start of those that hold, the next clearly slower ones, and the least violating one.
       // Far beyond what the crew can hold no step of the optimiser will mend it: the closer look decides.
-      const hopeless = ranked.length > 0 && ranked.every((p) => p.armExcess > HOPELESS);
+      hopeless = ranked.length > 0 && ranked.every((p) => p.armExcess > HOPELESS);
       const chosen = hopeless ? [] : ranked.slice(0, thorough ? 5 : 3);
       for (const p of chosen) {
         const a = attempt(p.x, 25);
@@ -154,6 +160,8 @@ export function createSolver(model: ForceModel): Solver {
   };
 }
 
+/** Steps a start gets that only fills a grid: most need four. */
+const QUICK_ITERATIONS = 14;
 /** Excess of the crew's arm over its range beyond which a start is not worth an attempt; judgement. */
 const HOPELESS = 0.3;
 const NO_FORCE = 'the sails give no forward force that exceeds the resistance at any speed';

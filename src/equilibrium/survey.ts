@@ -27,7 +27,10 @@ const RUNGS = 16;
 const LOWEST = 0.01;
 const HIGHEST = 2.6;
 
-export function createSurvey(model: ForceModel): (tws: number, twa: number, thorough: boolean) => Survey {
+export type SurveyOf = (tws: number, twa: number, thorough: boolean, eased?: boolean) => Survey;
+
+/** @returns a look that, where asked, keeps to sails that are far eased: heeling moment only falls with easing */
+export function createSurvey(model: ForceModel): SurveyOf {
   const nSide = model.sideConditions;
   const { lower, upper } = model.bounds;
   const c = new Float64Array(RES.count);
@@ -84,7 +87,7 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
     return left < 1e-4 + 0.05 * Math.abs(c[RES.surge]!) ? c[RES.surge]! : Number.NaN;
   };
 
-  return (tws, twa, thorough) => {
+  return (tws, twa, thorough, eased = false) => {
     evaluations = 0;
     model.prepare?.(tws, twa);
     const points: SurveyPoint[] = [];
@@ -94,9 +97,9 @@ export function createSurvey(model: ForceModel): (tws: number, twa: number, thor
       ? [0.02, 0.15, 0.3].filter((h) => h < heelTop).concat(heelTop)
       : [0.03, 0.2, 0.38].filter((h) => h <= heelTop);
     if (heels.length === 0) heels.push(heelTop);
-    const depowers = (thorough ? [0, 0.3, 0.6, 0.8, 0.93, 0.99] : [0, 0.4, 0.75]).filter(
-      (t) => t <= upper[X.depower]!,
-    );
+    const depowers = (
+      thorough ? (eased ? [0.8, 0.93, 0.99] : [0, 0.3, 0.6, 0.8, 0.93, 0.99]) : [0, 0.4, 0.75]
+    ).filter((t) => t <= upper[X.depower]!);
     const rungs = thorough ? 11 : RUNGS;
     const x = new Float64Array(X.count);
     const previous = new Float64Array(X.count);
