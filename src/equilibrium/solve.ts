@@ -124,8 +124,13 @@ export function createSolver(model: ForceModel): Solver {
     let hopeless = false;
     for (const thorough of [false, true]) {
       // Where the first look found her far overpowered at every start, the closer one looks at eased sails only.
-      seen = survey(tws, twa, thorough, hopeless);
-      evaluations += seen.evaluations;
+      const look = survey(tws, twa, thorough, hopeless);
+      evaluations += look.evaluations;
+      // An eased look alone would forget that there is drive at full power.
+      seen =
+        hopeless && seen !== undefined
+          ? { ...look, points: [...look.points, ...seen.points], anyDrive: true }
+          : look;
       const excess = (p: Survey['points'][number]): number => p.armExcess + p.rudderExcess + p.foilExcess;
       const ranked = [...seen.points].sort(
         (a, b) =>
@@ -217,7 +222,7 @@ function brokenLimit(model: ForceModel, a: Attempt): { why: Unbalance; reason: s
 const HELM = 'the helm cannot hold the course';
 
 function armReason(excess: number): string {
-  return `even fully eased the heeling moment exceeds the crew's reach by ${(100 * excess).toFixed(1)} % of its range`;
+  return `wherever she has drive the heeling moment exceeds what the crew can hold, by ${(100 * excess).toFixed(0)} % of their range or more`;
 }
 
 function diagnose(
