@@ -7,6 +7,7 @@ import { CAUTIONS, ERROR_BANDS, ERROR_BANDS_SOURCE, METHODS } from './cautions.j
 import { crossoverHtml } from './crossover.js';
 import { escapeHtml } from './escape.js';
 import { type Decimals, decimalsFor, fixed, rounded, significant } from './numbers.js';
+import { pageHead } from './page-head.js';
 import { PAGE_SCRIPT } from './page-script.js';
 import { PAGE_STYLE } from './page-style.js';
 import { fileStem, oneLine } from './plain-text.js';
@@ -402,29 +403,11 @@ export function polarPage(report: PolarReport, decimals = 2): string {
   const { polar, boat } = report;
   const library = plotlySource();
   const script = inlineScript(PAGE_SCRIPT);
-  const policy = [
-    "default-src 'none'",
-    `script-src ${sha256(library)} ${sha256(script)}`,
-    "style-src 'unsafe-inline'",
-    'img-src data: blob:',
-    "base-uri 'none'",
-    "form-action 'none'",
-  ].join('; ');
   const name = escapeHtml(oneLine(boat.name));
   const note = oneLine(boat.note);
   const height = significant(polar.windHeight, 3);
   const sails = sailChartsHtml(report.sails);
-  return `<!doctype html>
-<html lang="en">
-<head>
-<meta charset="utf-8">
-<meta http-equiv="Content-Security-Policy" content="${escapeHtml(policy)}">
-<meta name="viewport" content="width=device-width, initial-scale=1">
-<meta name="referrer" content="no-referrer">
-<link rel="icon" href="data:,">
-<title>${name}: predicted speeds</title>
-<style>${PAGE_STYLE}${seriesStyle()}</style>
-</head>
+  return `${pageHead(`${oneLine(boat.name)}: predicted speeds`, `${PAGE_STYLE}${seriesStyle()}`, `${sha256(library)} ${sha256(script)}`)}
 <body>
 <div class="page">
 <header>

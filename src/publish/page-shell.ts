@@ -1,5 +1,6 @@
 import { CAUTIONS } from './cautions.js';
 import { escapeHtml } from './escape.js';
+import { pageHead } from './page-head.js';
 import { PAGE_STYLE } from './page-style.js';
 import { oneLine } from './plain-text.js';
 import { seriesStyle } from './series-style.js';
@@ -13,24 +14,12 @@ export interface StaticPage {
 }
 
 export function staticPage(p: StaticPage): string {
-  const policy =
-    "default-src 'none'; style-src 'unsafe-inline'; img-src data:; base-uri 'none'; form-action 'none'";
   const nav = p.sections.map((s) => `<a href="#${s.id}">${escapeHtml(s.heading.toLowerCase())}</a>`).join('');
   const body = p.sections
     .map((s) => `<section id="${s.id}"><h2>${escapeHtml(s.heading)}</h2>\n${s.html}\n</section>`)
     .join('\n');
   const title = escapeHtml(oneLine(p.title));
-  return `<!doctype html>
-<html lang="en">
-<head>
-<meta charset="utf-8">
-<meta http-equiv="Content-Security-Policy" content="${escapeHtml(policy)}">
-<meta name="viewport" content="width=device-width, initial-scale=1">
-<meta name="referrer" content="no-referrer">
-<link rel="icon" href="data:,">
-<title>${title}</title>
-<style>${PAGE_STYLE}${seriesStyle()}</style>
-</head>
+  return `${pageHead(oneLine(p.title), `${PAGE_STYLE}${seriesStyle()}`)}
 <body>
 <div class="page">
 <header>

@@ -2,6 +2,7 @@ import { degrees } from '../units/index.js';
 import { CAUTIONS } from './cautions.js';
 import { escapeHtml } from './escape.js';
 import { fixed, significant } from './numbers.js';
+import { pageHead } from './page-head.js';
 import { oneLine, shortened } from './plain-text.js';
 import { type SpeedUnit, speedIn } from './table-format.js';
 import { percentTable, type TargetCard, type TargetCell } from './targets.js';
@@ -219,8 +220,6 @@ export function targetsCardPage(card: TargetCard, unit: SpeedUnit, paper: CardPa
     ),
     { title: 'How to read the cards', html: `<div class="reading">${reading(card)}</div>` },
   ];
-  const policy =
-    "default-src 'none'; style-src 'unsafe-inline'; img-src data:; base-uri 'none'; form-action 'none'";
   const body = cards
     .map(
       ({ title, html }, i) => `<section class="card" id="card-${i + 1}" aria-labelledby="title-${i + 1}">
@@ -232,17 +231,7 @@ ${html}
 </section>`,
     )
     .join('\n');
-  return `<!doctype html>
-<html lang="en">
-<head>
-<meta charset="utf-8">
-<meta http-equiv="Content-Security-Policy" content="${escapeHtml(policy)}">
-<meta name="viewport" content="width=device-width, initial-scale=1">
-<meta name="referrer" content="no-referrer">
-<link rel="icon" href="data:,">
-<title>${escapeHtml(name)}: target card, ${paper}</title>
-<style>${style(paper)}</style>
-</head>
+  return `${pageHead(`${name}: target card, ${paper}`, style(paper))}
 <body>
 <main>
 ${body}
