@@ -1,10 +1,12 @@
 import { createHash } from 'node:crypto';
-import { z } from 'zod';
+import { createRequire } from 'node:module';
 import type { SpeedPoint, SpeedRow, SpeedTable } from '../polar/index.js';
 import { rounded } from './numbers.js';
 import { oneLine, shortened } from './plain-text.js';
 import { TableFileError } from './read-cells.js';
 import { checkSize, type TableReading } from './read-table.js';
+
+type Zod = typeof import('zod').z;
 
 /** Version of the Signal K specification whose schemas the output follows. */
 export const SIGNAL_K_VERSION = '1.5.1';
@@ -63,26 +65,37 @@ export function signalKPolar(table: SpeedTable, description: string): string {
   return `${json}\n`;
 }
 
-const speed = z.number().min(0).max(60);
-const angle = z
-  .number()
-  .min(-2 * Math.PI)
-  .max(2 * Math.PI + 1e-3);
-const points = z.array(z.tuple([angle, speed]).rest(z.number())).max(800);
-const POLAR = z.object({
-  name: z.string().optional(),
-  windData: z
-    .array(
-      z.object({
-        trueWindSpeed: speed,
-        optimalBeats: points.optional(),
-        optimalGybes: points.optional(),
-        angleData: points,
-      }),
-    )
-    .min(1)
-    .max(400),
-});
+/** The shape a polar must have to be read. */
+function polarShape(z: Zod) {
+  const speed = z.number().min(0).max(60);
+  const angle = z
+    .number()
+    .min(-2 * Math.PI)
+    .max(2 * Math.PI + 1e-3);
+  const points = z.array(z.tuple([angle, speed]).rest(z.number())).max(800);
+  return z.object({
+    name: z.string().optional(),
+    windData: z
+      .array(
+        z.object({
+          trueWindSpeed: speed,
+          optimalBeats: points.optional(),
+          optimalGybes: points.optional(),
+          angleData: points,
+        }),
+      )
+      .min(1)
+      .max(400),
+  });
+}
+
+let shape: ReturnType<typeof polarShape> | undefined;
+
+/** The checking library takes nearly a tenth of a second to load: only reading needs it. */
+function polarReader(): ReturnType<typeof polarShape> {
+  shape ??= polarShape((createRequire(import.meta.url)('zod') as typeof import('zod')).z);
+  return shape;
+}
 
 type Tree = { readonly [key: string]: unknown };
 const isTree = (v: unknown): v is Tree => typeof v === 'object' && v !== null && !Array.isArray(v);
@@ -128,7 +141,7 @@ export function readSignalKPolar(text: string, file: string): TableReading {
       'there is no polar with windData in it',
       'a Signal K document holds polars under vessels.*.performance.polars',
     );
-  const read = POLAR.safeParse(chosen.polar);
+  const read = polarReader().safeParse(chosen.polar);
   if (!read.success) {
     const issue = read.error.issues[0]!;
     const place = issue.path
